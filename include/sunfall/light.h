@@ -1,0 +1,74 @@
+#pragma once
+// The light that comes down on open level ground: every weather source becomes one series of
+// beam and sky photons at 10-minute steps over whole local-standard days.
+//
+// A source is one registered factory (src/light/sources.cpp); another source is one file pair and
+// one line there.
+
+#include <array>
+#include <chrono>
+#include <optional>
+#include <string>
+#include <variant>
+#include <vector>
+
+#include "sunfall/sun.h"
+#include "sunfall/time.h"
+
+namespace sunfall {
+
+inline constexpr std::chrono::seconds kLightStep{600};
+
+// Means over one step on a level plane.
+struct LightStep {
+  float beam_umol = 0.0F;  // photons 400-700 nm that come from the sun itself, µmol m-2 s-1
+  float sky_umol = 0.0F;   // diffuse photons, the circumsolar part included, µmol m-2 s-1
+  float beam_w = 0.0F;     // broadband beam on the level plane, W m-2
+  float sky_w = 0.0F;      // broadband diffuse, W m-2
+};
+
+// A series covers whole years: from the first local-standard midnight of `first_year` on.
+struct LightSeries {
+  Place place;
+  std::chrono::seconds utc_offset{0};  // local standard time minus UTC
+  std::chrono::year first_year{2025};
+  int years = 1;
+  SunTrack sun;                  // same steps
+  std::vector<LightStep> steps;  // same length as sun.mean_sine
+  std::string description;       // one line for people: "cloudless sky, Linke turbidity 3.0"
+  bool is_ceiling = false;       // a cloudless ceiling; labelled so everywhere
+  std::vector<std::string> notes;  // assumptions that were made for the user
+};
+
+// The month (0-11) of step i, by local standard time, and the number of days of each month
+// summed over the series' years.
+int month_of_step(const LightSeries& series, std::size_t step);
+std::array<int, 12> days_of_months(const LightSeries& series);
+
+// A cloudless sky: Ineichen and Perez (2002) with Linke turbidity by month.
+struct ClearSource {
+  std::array<double, 12> linke_turbidity{3, 3, 3, 3, 3, 3, 3, 3, 3, 3, 3, 3};
+};
+// Monthly mean of daily global radiation, MJ m-2 d-1, January to December.
+struct MonthlyGlobalSource {
+  std::array<double, 12> global_mj_m2_d{};
+};
+using LightSource = std::variant<ClearSource, MonthlyGlobalSource>;
+
+struct LightOptions {
+  int year = 2025;  // the calendar year whose sun is followed when the source names none
+};
+
+// Throws Error(plan) for radiation that is negative, not finite or above the extraterrestrial;
+// `where` tells the error where the source stood in the plan.
+LightSeries make_light(const LightSource& source, const Place& place, const Clock& clock,
+                       const LightOptions& options, const std::string& where);
+
+// Photons 400-700 nm per joule of global radiation and their beam part, from broadband values.
+struct PhotonSplit {
+  double beam_umol = 0.0;
+  double sky_umol = 0.0;
+};
+PhotonSplit photons(double beam_w, double sky_w, double extraterrestrial_level_w, Angle elevation);
+
+}  // namespace sunfall

@@ -1,0 +1,61 @@
+#pragma once
+// The plan: one TOML file that names every input and every choice, read into typed values.
+// Unknown keys are errors that name the nearest known key; every error tells file, line and key.
+
+#include <filesystem>
+#include <optional>
+#include <string>
+#include <vector>
+
+#include "sunfall/dome.h"
+#include "sunfall/grid.h"
+#include "sunfall/light.h"
+#include "sunfall/time.h"
+
+namespace sunfall {
+
+enum class ReceiverPlane { level, ground };
+
+struct SitePlan {
+  std::filesystem::path ground;                     // resolved against the plan's folder
+  std::optional<std::filesystem::path> surface;     // top of everything solid
+  std::optional<std::filesystem::path> far_ground;  // coarser terrain around
+  double receiver_height_m = 0.5;
+  ReceiverPlane receiver_plane = ReceiverPlane::level;
+  Clock clock;
+};
+
+struct PlotsPlan {
+  std::filesystem::path file;
+  std::string layer;                 // empty: the file's only layer
+  std::string id = "id";
+  std::optional<std::string> crop;   // field that names each plot's crop
+};
+
+struct DomePlan {
+  DomeQuality quality = DomeQuality::standard;
+  SkyModel sky = SkyModel::clearness;
+};
+
+struct OutputPlan {
+  bool shares = false;
+};
+
+struct Plan {
+  std::filesystem::path file;  // as given
+  std::string name;            // [plan] name, else the file's stem
+  SitePlan site;
+  LightSource light;
+  std::string light_where;     // "farm.toml:9 light.monthly_global", for errors found later
+  LightOptions light_options;
+  std::vector<Period> periods;  // the twelve months, then named seasons in the plan's order
+  std::optional<PlotsPlan> plots;
+  DomePlan dome;
+  OutputPlan output;
+  std::vector<std::string> defaults;  // "site.receiver_height = 0.5 m": what the plan left open
+};
+
+// Throws Error(plan).
+Plan read_plan(const std::filesystem::path& file);
+
+}  // namespace sunfall

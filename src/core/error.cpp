@@ -1,0 +1,35 @@
+#include "sunfall/error.h"
+
+#include <utility>
+
+namespace sunfall {
+
+int exit_status(ErrorKind kind) noexcept {
+  switch (kind) {
+    case ErrorKind::plan: return 2;
+    case ErrorKind::data: return 3;
+    case ErrorKind::io: return 4;
+    case ErrorKind::interrupted: return 5;
+    case ErrorKind::internal: return 1;
+  }
+  return 1;
+}
+
+namespace {
+
+std::string one_line(const Error::Parts& parts) {
+  std::string line;
+  if (!parts.where.empty()) line += parts.where + ": ";
+  line += parts.what;
+  if (!parts.found.empty()) line += " (found: " + parts.found + ")";
+  if (!parts.remedy.empty()) line += ". " + parts.remedy;
+  if (line.back() != '.') line += '.';
+  return line;
+}
+
+}  // namespace
+
+Error::Error(ErrorKind kind, Parts parts)
+    : kind_(kind), parts_(std::move(parts)), message_(one_line(parts_)) {}
+
+}  // namespace sunfall
