@@ -1,0 +1,45 @@
+#include "plan/table_rules.h"
+
+#include "plan/dome_table.h"
+#include "plan/light_table.h"
+#include "plan/output_table.h"
+#include "plan/periods_table.h"
+#include "plan/plan_table.h"
+#include "plan/plots_table.h"
+#include "plan/site_table.h"
+
+namespace sunfall {
+
+const std::vector<TableRule>& table_rules() {
+  static const std::vector<TableRule> rules = {
+      {plan_shape(), read_plan_table},  // before all others: it names the plan
+      {site_shape(), read_site_table},
+      {light_shape(), read_light_table},  // before periods: it sets the year
+      {periods_shape(), read_periods_table},
+      {plots_shape(), read_plots_table},
+      {dome_shape(), read_dome_table},
+      {output_shape(), read_output_table},
+  };
+  return rules;
+}
+
+const std::vector<std::string>& tables_not_built_yet() {
+  static const std::vector<std::string> names = {"canopy", "rows",  "house",  "panels",
+                                                 "choice", "lamps", "screens"};
+  return names;
+}
+
+std::map<std::string, std::string> homes_of_keys() {
+  std::map<std::string, int> count;
+  std::map<std::string, std::string> homes;
+  for (const TableRule& rule : table_rules()) {
+    for (const KeyNote& key : rule.shape.keys) {
+      homes[key.name] = rule.shape.name;
+      ++count[key.name];
+    }
+  }
+  std::erase_if(homes, [&](const auto& home) { return count[home.first] > 1; });
+  return homes;
+}
+
+}  // namespace sunfall
