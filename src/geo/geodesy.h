@@ -8,9 +8,9 @@
 namespace sunfall {
 
 struct GeoPlace {
-  Place place;        // WGS84; height left at 0
-  Angle convergence;  // bearing of grid north from true north, clockwise positive
-  double scale = 1.0; // point scale of the map: map metres per metre on the ellipsoid
+  Place place;         // WGS84; height left at 0
+  Angle convergence;   // bearing of grid north from true north, clockwise positive
+  double scale = 1.0;  // point scale of the map: map metres per metre on the ellipsoid
 };
 
 // Throws Error(data) where the point has no longitude and latitude in this CRS.

@@ -13,8 +13,8 @@ namespace sunfall {
 
 struct Plot {
   std::string id;
-  std::string crop;                            // empty where not given
-  std::vector<std::vector<MapPoint>> rings;    // outer rings counter-clockwise, holes clockwise
+  std::string crop;                          // empty where not given
+  std::vector<std::vector<MapPoint>> rings;  // outer rings counter-clockwise, holes clockwise
   double area_m2 = 0.0;
 };
 
