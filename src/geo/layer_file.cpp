@@ -8,7 +8,7 @@
 #include <cstring>
 #include <utility>
 
-#include "geo/whole_file.h"
+#include "core/whole_file.h"
 #include "sunfall/error.h"
 
 namespace sunfall {
@@ -47,25 +47,22 @@ void CellSum::add(std::uint64_t first_index, const float* values, std::size_t co
   cells_ += count;
 }
 
-LayerFile::LayerFile(std::filesystem::path path, int columns, int rows)
-    : path_(std::move(path)), columns_(columns), rows_(rows) {
-  descriptor_ = ::open(path_.c_str(), O_RDWR | O_CREAT | O_TRUNC | O_CLOEXEC, 0666);
-  if (descriptor_ < 0) fail("the layer's temporary file cannot be created", path_, errno);
+LayerFile::LayerFile(std::filesystem::path layer, int columns, int rows)
+    : layer_(std::move(layer)), columns_(columns), rows_(rows) {
+  const WholeFile reserved(layer_);  // takes the name away again at the end of this scope
+  descriptor_ = ::open(reserved.temporary().c_str(), O_RDWR | O_CLOEXEC);
+  if (descriptor_ < 0) fail("the layer's temporary file cannot be opened", layer_, errno);
   const auto bytes = static_cast<off_t>(index(0, rows_) * sizeof(float));
   // Reserving tells of a full disk before the work. File systems that cannot reserve get a size.
   int fault = ::fallocate(descriptor_, 0, 0, bytes) == 0 ? 0 : errno;
   if (fault == EOPNOTSUPP || fault == ENOSYS) fault = ::ftruncate(descriptor_, bytes) == 0 ? 0 : errno;
   if (fault != 0) {
     ::close(descriptor_);
-    discard(path_);
-    fail("there is no room for the layer", path_, fault);
+    fail("there is no room for the layer", layer_, fault);
   }
 }
 
-LayerFile::~LayerFile() {
-  ::close(descriptor_);
-  discard(path_);
-}
+LayerFile::~LayerFile() { ::close(descriptor_); }
 
 void LayerFile::write(const CellWindow& window, const float* values, std::size_t stride) {
   const std::size_t bytes = static_cast<std::size_t>(window.columns) * sizeof(float);
@@ -76,7 +73,7 @@ void LayerFile::write(const CellWindow& window, const float* values, std::size_t
       return ::pwrite(descriptor_, reinterpret_cast<const char*>(line) + done, bytes - done,
                       static_cast<off_t>(first * sizeof(float) + done));
     });
-    if (fault != 0) fail("the layer cannot be written", path_, fault);
+    if (fault != 0) fail("the layer cannot be written", layer_, fault);
     written_.add(first, line, static_cast<std::size_t>(window.columns));
   }
 }
@@ -90,7 +87,7 @@ void LayerFile::read(const CellWindow& window, float* values, std::size_t stride
       return ::pread(descriptor_, reinterpret_cast<char*>(line) + done, bytes - done,
                      static_cast<off_t>(first * sizeof(float) + done));
     });
-    if (fault != 0) fail("the layer's temporary file cannot be read back", path_, fault);
+    if (fault != 0) fail("the layer's temporary file cannot be read back", layer_, fault);
   }
 }
 

@@ -24,8 +24,9 @@ class CellSum {
 
 class LayerFile {
  public:
-  // Creates the file at its full size. Throws Error(io), at once where the disk has no room.
-  LayerFile(std::filesystem::path path, int columns, int rows);
+  // Creates the file at its full size beside `layer`, without a name: even a killed run leaves
+  // nothing of it. Throws Error(io), at once where the disk has no room.
+  LayerFile(std::filesystem::path layer, int columns, int rows);
   ~LayerFile();
   LayerFile(const LayerFile&) = delete;
   LayerFile& operator=(const LayerFile&) = delete;
@@ -43,7 +44,7 @@ class LayerFile {
     return static_cast<std::uint64_t>(row) * static_cast<std::uint64_t>(columns_) +
            static_cast<std::uint64_t>(column);
   }
-  std::filesystem::path path_;
+  std::filesystem::path layer_;  // for messages
   int descriptor_ = -1;
   int columns_;
   int rows_;

@@ -2,6 +2,7 @@
 
 #include <cpl_string.h>
 #include <gdal_priv.h>
+#include <unistd.h>
 
 #include <algorithm>
 #include <cmath>
@@ -10,12 +11,12 @@
 
 #include <fmt/format.h>
 
+#include "core/whole_file.h"
 #include "geo/crs.h"
 #include "geo/gdal_guard.h"
 #include "geo/layer_file.h"
 #include "geo/layer_values.h"
 #include "geo/lazy_raster.h"
-#include "geo/whole_file.h"
 
 namespace sunfall {
 namespace {
@@ -101,25 +102,15 @@ struct LayerWriter::State {
   LayerSpec spec;
   GridFrame frame;
   std::filesystem::path final_path;
-  std::filesystem::path copy_path;
   std::unique_ptr<LayerFile> file;
-  std::vector<float> row_buffer;
-
-  ~State() { discard_copy(); }
-
-  // GDAL's COG driver keeps overviews in a file of its own while it works.
-  void discard_copy() const noexcept {
-    discard(copy_path);
-    discard(copy_path.string() + ".ovr.tmp");
-    discard(copy_path.string() + ".msk.ovr.tmp");
-  }
+  std::vector<float> rounded_values;
 
   std::string where() const { return final_path.string(); }
-  void make_copy() const;
-  void verify_copy() const;
+  void make_copy(const std::filesystem::path& copy_path) const;
+  void verify_copy(const std::filesystem::path& copy_path) const;
 };
 
-void LayerWriter::State::make_copy() const {
+void LayerWriter::State::make_copy(const std::filesystem::path& copy_path) const {
   LazyRasterSpec raster_spec;
   raster_spec.columns = frame.columns;
   raster_spec.rows = frame.rows;
@@ -142,6 +133,8 @@ void LayerWriter::State::make_copy() const {
   // Closing returns nothing and may be where the last blocks fail to be written.
   const bool made = copy != nullptr;
   copy.reset();
+  // The driver collects overviews in a file of its own, and leaves it behind where it fails.
+  for (const char* ending : {".ovr.tmp", ".msk.ovr.tmp"}) ::unlink((copy_path.string() + ending).c_str());
   if (!made || guard.failed()) {
     guard.fail(ErrorKind::io, "the layer cannot be written", where(),
                "Make room on the disk or check its limits");
@@ -149,7 +142,7 @@ void LayerWriter::State::make_copy() const {
 }
 
 // The file on disk, decoded again, must hold exactly what was handed over.
-void LayerWriter::State::verify_copy() const {
+void LayerWriter::State::verify_copy(const std::filesystem::path& copy_path) const {
   GdalGuard guard;
   const GDALDatasetUniquePtr copy = open_layer(copy_path);
   CellSum found;
@@ -171,14 +164,10 @@ void LayerWriter::State::verify_copy() const {
 LayerWriter::LayerWriter(const std::filesystem::path& folder, LayerSpec spec, const GridFrame& frame)
     : state_(std::make_unique<State>()) {
   start_geo();
-  require_writable(folder);
   state_->spec = std::move(spec);
   state_->frame = frame;
   state_->final_path = folder / state_->spec.file_name;
-  state_->copy_path = hidden_name(state_->final_path, ".whole.tif");
-  state_->discard_copy();
-  state_->file =
-      std::make_unique<LayerFile>(hidden_name(state_->final_path, ".part"), frame.columns, frame.rows);
+  state_->file = std::make_unique<LayerFile>(state_->final_path, frame.columns, frame.rows);
 }
 
 LayerWriter::LayerWriter(LayerWriter&&) noexcept = default;
@@ -189,7 +178,7 @@ const LayerSpec& LayerWriter::spec() const { return state_->spec; }
 const std::filesystem::path& LayerWriter::final_path() const { return state_->final_path; }
 
 void LayerWriter::write(const CellWindow& window, const float* values) {
-  std::vector<float>& buffer = state_->row_buffer;
+  std::vector<float>& buffer = state_->rounded_values;
   const double quantum = state_->spec.quantum;
   const std::size_t cells = static_cast<std::size_t>(window.columns) * static_cast<std::size_t>(window.rows);
   buffer.resize(cells);
@@ -206,14 +195,10 @@ void LayerWriter::finish() {
                 {"a layer was finished before each cell was written once", state_->where(),
                  fmt::format("{} of {} cells", written, state_->frame.size()), ""});
   }
-  try {
-    state_->make_copy();
-    state_->verify_copy();
-    publish(state_->copy_path, state_->final_path);
-  } catch (...) {
-    state_->discard_copy();
-    throw;
-  }
+  WholeFile whole(state_->final_path);
+  state_->make_copy(whole.temporary());
+  state_->verify_copy(whole.temporary());
+  whole.commit();
   state_->file.reset();
 }
 

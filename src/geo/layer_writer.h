@@ -20,7 +20,7 @@ struct LayerSpec {
   std::map<std::string, std::string> provenance;  // default metadata domain, key to value
 };
 
-// Collects one layer's tiles in a hidden temporary file in `folder`, then turns it into the final
+// Collects one layer's tiles in a nameless temporary file in `folder`, then turns it into the final
 // file. Float32, nodata -9999, one band. `write` is for one thread at a time per writer; different
 // writers may be used from different threads.
 class LayerWriter {
@@ -28,11 +28,12 @@ class LayerWriter {
   LayerWriter(const std::filesystem::path& folder, LayerSpec spec, const GridFrame& frame);
   LayerWriter(LayerWriter&&) noexcept;
   LayerWriter& operator=(LayerWriter&&) noexcept;
-  ~LayerWriter();  // removes the temporary files of a layer that was not finished
+  ~LayerWriter();  // a layer that was not finished leaves nothing behind
 
   const LayerSpec& spec() const;
   // `values` row by row, window.columns × window.rows; missing (NaN) becomes nodata. The window
-  // must lie inside the frame. Throws Error(io).
+  // must lie inside the frame, and in the end each cell must have been written exactly once.
+  // Throws Error(io).
   void write(const CellWindow& window, const float* values);
   // Statistics, overviews, COG, close, verify by reading back, flush to disk, rename to the final
   // name. Throws Error(io), and then no file stands under the final name.
