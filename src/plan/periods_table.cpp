@@ -12,6 +12,7 @@ const FlagKey kMonths{"months", true, ""};
 const DayKey kFrom{"from"};
 const DayKey kTo{"to"};
 
+constexpr std::size_t kMostRanges = 52;   // each costs a layer and a share of memory; enough for weeks
 constexpr std::size_t kLongestName = 40;  // it becomes part of file names
 const char* const kNamedRange = "a named range { from = \"MM-DD\", to = \"MM-DD\" }";
 
@@ -65,8 +66,13 @@ void read_periods_table(TableReader& table, Plan& plan) {
     table.refuse(kMonths.name, "the twelve months are always made", "false",
                  "Remove the key; the year and the darkest month are made from them");
   }
+  const std::vector<std::string> names = table.own_names();
+  if (names.size() > kMostRanges) {
+    table.refuse(names[kMostRanges], "too many named ranges", std::to_string(names.size()),
+                 "Keep to " + std::to_string(kMostRanges) + " in a plan");
+  }
   plan.periods = month_periods();
-  for (const std::string& name : table.own_names()) {
+  for (const std::string& name : names) {
     plan.periods.push_back(read_range(table, name, plan.light_options.year));
   }
 }

@@ -1,6 +1,7 @@
 #include "plan/table_reader.h"
 
 #include <fmt/format.h>
+#include <algorithm>
 #include <cmath>
 
 #include "plan/input_path.h"
@@ -92,7 +93,10 @@ const toml::node* TableReader::take(const std::string& key) {
 const toml::node& TableReader::required(const std::string& key) {
   const toml::node* node = take(key);
   if (node == nullptr) {
-    refuse(key, "missing; the plan must give it", "", "See [" + shape_.name + "] in docs/plan.md");
+    const auto note = std::find_if(shape_.keys.begin(), shape_.keys.end(),
+                                   [&](const KeyNote& candidate) { return candidate.name == key; });
+    refuse(key, "missing; the plan must give it", "",
+           fmt::format("Add it to [{}] (type: {})", shape_.name, note->type));
   }
   return *node;
 }
