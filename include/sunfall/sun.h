@@ -43,7 +43,10 @@ SunPosition sun_position(UtcTime time, const Place& place);
 double extraterrestrial_normal_w_m2(double distance_au);
 
 // A day's rise, transit and set of the sun's centre through `threshold` geometric elevation
-// (-0.8333 degrees for the usual almanac sunrise).
+// (-0.8333 degrees for the usual almanac sunrise). Each is an event of the given local date. Near
+// the midnight sun a date may lack a rise or a set: then its begin or its end stands for it; a set
+// may come before the rise; of two, the one next to the transit counts. `rise` and `set` mean
+// nothing where `kind` is always_up or never_up. Good to a second or two.
 struct SunDay {
   enum class Kind { rises, always_up, never_up };
   Kind kind = Kind::rises;
@@ -55,8 +58,8 @@ SunDay sun_day(Date date, std::chrono::seconds utc_offset, const Place& place,
                Angle threshold = Angle::degrees(-0.8333));
 
 // The sun over many equal steps. Step i runs from begin + i·step to begin + (i+1)·step.
-// The ephemeris is evaluated by the full model at nodes some hours apart and interpolated between
-// them (error below 1e-5 degrees), so a year of 10-minute steps costs milliseconds.
+// The ephemeris is evaluated by the full model every second day and interpolated between (error
+// below 1e-5 degrees), so a year of 10-minute steps costs milliseconds.
 struct SunTrack {
   UtcTime begin{};
   std::chrono::seconds step{600};
