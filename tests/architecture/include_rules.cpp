@@ -33,7 +33,8 @@ std::optional<std::string> owner_of(const std::string& target) {
 }  // namespace
 
 const std::vector<FolderRule>& folder_rules() {
-  // sun's Place stands in geo's contract, and the plan is written in the terms of light and dome.
+  // sun's Place stands in geo's contract; the plan is written in the terms of light and dome; the map
+  // is the main job, which starts from a plan and brings its light.
   static const std::vector<FolderRule> rules = {
       {"core", {}},
       {"sun", {}},
@@ -42,7 +43,7 @@ const std::vector<FolderRule>& folder_rules() {
       {"dome", {"sun", "light"}},
       {"plan", {"sun", "geo", "light", "dome"}},
       {"shade", {"geo", "dome"}},
-      {"map", {"geo", "dome", "shade"}},
+      {"map", {"sun", "geo", "light", "dome", "plan", "shade"}},
       {"advise", {"light", "plan", "map"}},
       {"report", {"geo", "map", "advise"}},
       {"app", {"sun", "geo", "light", "dome", "plan", "shade", "map", "advise", "report"}},
