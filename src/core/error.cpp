@@ -18,12 +18,12 @@ int exit_status(ErrorKind kind) noexcept {
 namespace {
 
 std::string one_line(const Error::Parts& parts) {
-  std::string line;
-  if (!parts.where.empty()) line += parts.where + ": ";
-  line += parts.what;
-  if (!parts.found.empty()) line += " (found: " + parts.found + ")";
-  if (!parts.remedy.empty()) line += ". " + parts.remedy;
-  if (line.back() != '.') line += '.';
+  std::string line = parts.where;
+  if (!line.empty()) line.append(": ");
+  line.append(parts.what);
+  if (!parts.found.empty()) line.append(" (found: ").append(parts.found).append(")");
+  if (!parts.remedy.empty()) line.append(". ").append(parts.remedy);
+  if (line.empty() || line.back() != '.') line.push_back('.');
   return line;
 }
 

@@ -1,0 +1,50 @@
+#pragma once
+// The main job: from a plan to light maps in a run folder.
+
+#include <filesystem>
+#include <map>
+#include <string>
+#include <vector>
+
+#include "sunfall/dome.h"
+#include "sunfall/grid.h"
+#include "sunfall/plan.h"
+#include "sunfall/progress.h"
+
+namespace sunfall {
+
+struct MapOptions {
+  int jobs = 0;         // worker threads; 0 for as many as the machine has
+  int tile_cells = 512;  // side of a tile
+  bool reverse_tiles = false;  // last tile first; the result does not depend on it
+};
+
+// The open field: what falls on level ground with nothing around it.
+struct OpenField {
+  std::vector<double> beam;  // mol m-2 d-1 per period
+  std::vector<double> sky;
+  double year = 0.0;         // beam and sky over the year's mean day
+};
+
+struct MapLayer {
+  std::string file_name;
+  std::string description;
+  std::string unit;
+};
+
+struct MapResult {
+  GridFrame frame;
+  std::vector<MapLayer> layers;
+  std::vector<Period> periods;
+  OpenField open;
+  double valid_fraction = 0.0;  // cells with a value
+  double mean_sight = 0.0;
+  std::map<std::string, double> seconds;  // per stage
+};
+
+// Writes the rasters of the plan into `folder`, each whole or not at all. Light must be made for
+// the plan's place and its periods. Throws Error; on interruption, Error(interrupted).
+MapResult make_maps(const Plan& plan, const DomeLight& light, const std::map<std::string, std::string>& provenance,
+                    const std::filesystem::path& folder, const MapOptions& options, Progress& progress);
+
+}  // namespace sunfall

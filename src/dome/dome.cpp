@@ -1,0 +1,26 @@
+#include "sunfall/dome.h"
+
+#include <fmt/format.h>
+
+namespace sunfall {
+
+Dome Dome::of(DomeQuality quality) {
+  switch (quality) {
+    case DomeQuality::draft: return {36, 15, 2, 8};
+    case DomeQuality::standard: return {72, 30, 3, 4};
+    case DomeQuality::fine: return {180, 60, 2, 4};
+  }
+  return {};
+}
+
+std::vector<Period> month_periods() {
+  using std::chrono::day, std::chrono::last, std::chrono::month;
+  std::vector<Period> periods;
+  for (unsigned m = 1; m <= 12; ++m) {
+    const std::chrono::year_month_day_last end = std::chrono::year{2024} / month{m} / last;
+    periods.push_back({fmt::format("{:02}", m), month{m} / day{1}, month{m} / end.day()});
+  }
+  return periods;
+}
+
+}  // namespace sunfall

@@ -1,0 +1,35 @@
+#pragma once
+// Sky light of one moment, cut into the dome's sectors and bands.
+
+#include <vector>
+
+#include "dome/sky_radiance.h"
+#include "sunfall/dome.h"
+#include "sunfall/sun.h"
+
+namespace sunfall {
+
+// Evaluates one sky shape over a dome. The result is the fraction of the diffuse light on the level
+// that arrives from each sector and band, [sector][band], adding up to 1; finite and never negative
+// for any shape (negative radiance counts as none; a sky with none at all falls back to uniform).
+class SkyPatches {
+ public:
+  explicit SkyPatches(const Dome& dome);
+  // `sun` is the direction of the sun; below the horizon it is taken at the horizon.
+  const std::vector<float>& perez(const SkyShape& shape, const SkyDirection& sun);
+  const std::vector<float>& isotropic();
+  const std::vector<float>& overcast();
+
+ private:
+  template <typename Radiance>
+  const std::vector<float>& by_band(Radiance radiance);
+  void normalise();
+
+  int sectors_;
+  int bands_;
+  std::vector<float> east_, north_;   // of sector middles
+  std::vector<float> sine_, cosine_;  // of band middles
+  std::vector<float> fraction_;
+};
+
+}  // namespace sunfall

@@ -1,0 +1,45 @@
+#pragma once
+// Relative radiance of the sky by direction.
+//
+// Perez, Seals and Michalsky (1993), Solar Energy 50:235, equation 1 and table 1: all-weather
+// distribution from the sky's clearness and brightness. Used as the relative shape of sky PAR.
+// CIE overcast and isotropic skies for checks.
+
+#include <array>
+
+#include "sunfall/dome.h"
+
+namespace sunfall {
+
+// Perez parameters of one sky, equation 1: l = [1 + a·exp(b / cos zenith)]·[1 + c·exp(d·gap) + e·cos²gap],
+// gap being the angle from the sun.
+struct SkyShape {
+  double a = 0.0, b = -1.0, c = 0.0, d = -1.0, e = 0.0;
+};
+
+struct SkyState {
+  double sky_w_m2 = 0.0;  // diffuse on the level
+  double beam_normal_w_m2 = 0.0;
+  double extraterrestrial_w_m2 = 1361.0;  // normal
+  Angle sun_zenith;
+};
+
+// Clearness (epsilon) and brightness (Delta), equations of section 2, with Kasten and Young (1989)
+// relative air mass at sea level as in the paper.
+struct SkyIndices {
+  double clearness = 1.0;
+  double brightness = 0.0;
+};
+SkyIndices sky_indices(const SkyState& state);
+
+// The published parameters outside the region where they fail: brightness is held to at least 0.2
+// in classes 2 to 6 (below, the horizon term turns negative or exp(b / cos zenith) runs away) and
+// to at most 0.15 in class 8 (above, the exponent overflows).
+SkyShape perez_shape(const SkyIndices& indices, Angle sun_zenith);
+// The parameters without the guard, for comparison with published values.
+SkyShape perez_shape_unguarded(const SkyIndices& indices, Angle sun_zenith);
+
+// CIE traditional overcast sky: proportional to (1 + 2 sin elevation) / 3.
+double overcast_radiance(double sine_elevation);
+
+}  // namespace sunfall

@@ -1,0 +1,36 @@
+#pragma once
+// Adds up what the horizons of several lines take from every cell of a tile. All columns of a cell
+// stay in registers while the lines pass.
+
+#include <cstdint>
+#include <span>
+
+namespace sunfall {
+
+// Horizon steps of a tile for some lines; `by_columns` says that cells are stored column by column.
+struct HorizonBatch {
+  std::span<const std::uint16_t* const> steps;  // per line, one step per cell
+  int rows = 0;
+  int columns = 0;
+  bool by_columns = false;
+};
+
+// sums[cell][32] += table[line][step of the cell][32] over the lines; cells row by row.
+void accumulate_level(const HorizonBatch& batch, std::span<const std::uint16_t* const> tables,
+                      std::uint32_t* sums);
+
+// For receivers in the plane of the ground. With a cell's ground rising by `rise` per metre towards
+// a line, light on its plane is n·(level - rise·facing), n being the upright part of its normal;
+// sums gather level - rise·facing of the light below the horizon:
+// sums[cell][width] += level[step][width] - rise·facing[step][width].
+struct SlopeTables {
+  std::span<const float* const> tables;  // per line, [step][2][width]
+  int width = 0;                         // a multiple of 8
+  const float* rise_east = nullptr;      // per cell, row by row
+  const float* rise_north = nullptr;
+  std::span<const float> towards_east;  // per line, unit vector on the ground
+  std::span<const float> towards_north;
+};
+void accumulate_slope(const HorizonBatch& batch, const SlopeTables& slope, float* sums);
+
+}  // namespace sunfall

@@ -1,0 +1,168 @@
+// Tiles, one after another on every core: terrain around the tile, shares, light, layers.
+
+#include <tbb/parallel_for.h>
+#include <tbb/task_arena.h>
+
+#include <algorithm>
+#include <chrono>
+#include <memory>
+#include <mutex>
+
+#include "geo/geodesy.h"
+#include "geo/layer_writer.h"
+#include "map/layers.h"
+#include "map/open_terrain.h"
+#include "map/sight.h"
+#include "map/tile_solver.h"
+#include "shade/terrain.h"
+#include "sunfall/error.h"
+#include "sunfall/map.h"
+
+namespace sunfall {
+namespace {
+
+class Stopwatch {
+ public:
+  double seconds() const {
+    return std::chrono::duration<double>(std::chrono::steady_clock::now() - start_).count();
+  }
+
+ private:
+  std::chrono::steady_clock::time_point start_ = std::chrono::steady_clock::now();
+};
+
+std::vector<CellWindow> tiles_of(const GridFrame& frame, int size) {
+  std::vector<CellWindow> tiles;
+  for (int row = 0; row < frame.rows; row += size) {
+    for (int column = 0; column < frame.columns; column += size) {
+      tiles.push_back(
+          {column, row, std::min(size, frame.columns - column), std::min(size, frame.rows - row)});
+    }
+  }
+  return tiles;
+}
+
+void stop_if_asked(const Progress& progress) {
+  if (progress.stop_requested()) {
+    throw Error(ErrorKind::interrupted,
+                {"stopped before the maps were done", "", "", "Run the same command again"});
+  }
+}
+
+// A layer on its way to disk; tiles arrive from several threads.
+struct OpenLayer {
+  LayerRecipe recipe;
+  LayerWriter writer;
+  std::mutex writing;
+  OpenLayer(const std::filesystem::path& folder, LayerRecipe r, const GridFrame& frame)
+      : recipe(std::move(r)), writer(folder, recipe.spec, frame) {}
+};
+
+// Tells progress from several threads, one at a time.
+class SharedProgress {
+ public:
+  SharedProgress(Progress& progress, std::string stage, std::size_t total)
+      : progress_(progress), stage_(std::move(stage)), total_(total) {}
+  void one_done() {
+    const std::lock_guard lock(telling_);
+    progress_.advance(stage_, double(++done_) / double(total_));
+  }
+
+ private:
+  Progress& progress_;
+  std::string stage_;
+  std::size_t total_;
+  std::size_t done_ = 0;
+  std::mutex telling_;
+};
+
+// Runs work(i) for i in [0, count) on `jobs` threads, in order of starting.
+template <typename Work>
+void on_all_cores(int jobs, std::size_t count, Work work) {
+  tbb::task_arena arena(jobs > 0 ? jobs : tbb::task_arena::automatic);
+  arena.execute([&] {
+    tbb::parallel_for(
+        tbb::blocked_range<std::size_t>(0, count, 1),
+        [&](const tbb::blocked_range<std::size_t>& range) {
+          for (std::size_t i = range.begin(); i < range.end(); ++i) work(i);
+        },
+        tbb::simple_partitioner());
+  });
+}
+
+}  // namespace
+
+Terrain::Inputs open_terrain(const SitePlan& site) {
+  Terrain::Inputs inputs{
+      RasterSource::open(site.ground, "ground"), {}, site.far_ground, site.receiver_height_m};
+  if (site.surface) inputs.surface = RasterSource::open(*site.surface, "surface");
+  return inputs;
+}
+
+MapResult make_maps(const Plan& plan, const DomeLight& light,
+                    const std::map<std::string, std::string>& provenance, const std::filesystem::path& folder,
+                    const MapOptions& options, Progress& progress) {
+  MapResult result;
+  Stopwatch reading;
+  Terrain terrain(open_terrain(plan.site), progress);
+  result.seconds["reading"] = reading.seconds();
+
+  const GridFrame& frame = terrain.frame();
+  result.frame = frame;
+  result.periods = light.periods;
+  result.open = open_field(light, plan.light_options.year);
+  const TileSolver solver(terrain, light, plan.site.receiver_plane);
+  std::vector<std::unique_ptr<OpenLayer>> layers;
+  for (LayerRecipe& recipe : layers_of(plan, light.periods, provenance)) {
+    result.layers.push_back({recipe.spec.file_name, recipe.spec.description, recipe.spec.unit});
+    layers.push_back(std::make_unique<OpenLayer>(folder, std::move(recipe), frame));
+  }
+
+  Stopwatch solving;
+  std::vector<CellWindow> tiles = tiles_of(frame, options.tile_cells);
+  if (options.reverse_tiles) std::reverse(tiles.begin(), tiles.end());
+  SharedProgress told(progress, "following the light", tiles.size());
+  struct Sum {
+    double sight = 0.0;
+    std::size_t usable = 0;
+  };
+  std::vector<Sum> sums(tiles.size());
+  on_all_cores(options.jobs, tiles.size(), [&](std::size_t i) {
+    stop_if_asked(progress);
+    const CellWindow& window = tiles[i];
+    const CellIndex middle{window.column + window.columns / 2, window.row + window.rows / 2};
+    const Angle convergence = geo_place(frame, frame.centre(middle)).convergence;
+    const TerrainTile tile = terrain.tile(window);
+    const TileShares shares = solver.solve(tile, convergence);
+    TileLight tile_light = light_of(shares, result.open, light.periods, plan.light_options.year);
+    tile_light.sight = tile_sight(tile, frame.cell_m);
+    for (std::size_t cell = 0; cell < shares.usable.size(); ++cell) {
+      sums[i].sight += tile_light.sight[cell];
+      sums[i].usable += shares.usable[cell] ? 1 : 0;
+    }
+    std::vector<float> values(shares.usable.size());
+    for (const auto& layer : layers) {
+      layer->recipe.fill(tile_light, values);
+      const std::lock_guard lock(layer->writing);
+      layer->writer.write(window, values.data());
+    }
+    told.one_done();
+  });
+  for (const Sum& sum : sums) {
+    result.mean_sight += sum.sight / double(frame.size());
+    result.valid_fraction += double(sum.usable) / double(frame.size());
+  }
+  result.seconds["light"] = solving.seconds();
+
+  Stopwatch writing;
+  SharedProgress finished(progress, "finishing the layers", layers.size());
+  on_all_cores(options.jobs, layers.size(), [&](std::size_t i) {
+    stop_if_asked(progress);
+    layers[i]->writer.finish();
+    finished.one_done();
+  });
+  result.seconds["layers"] = writing.seconds();
+  return result;
+}
+
+}  // namespace sunfall

@@ -1,0 +1,154 @@
+#include "map/tile_solver.h"
+
+#include <algorithm>
+#include <cmath>
+#include <tuple>
+
+#include "map/accumulate.h"
+
+namespace sunfall {
+namespace {
+
+// Lines whose horizons are kept at a time: their tables should stay in the second cache.
+constexpr int kBatch = 24;
+
+}  // namespace
+
+TileSolver::TileSolver(const Terrain& terrain, const DomeLight& light, ReceiverPlane plane)
+    : terrain_(terrain), dome_(light.dome), plane_(plane), level_(light) {
+  if (plane == ReceiverPlane::ground) slope_.emplace(light);
+  sweep_options_.cell_m = terrain.frame().cell_m;
+}
+
+template <typename Take>
+void TileSolver::batches(HorizonSweep& sweep, const CellWindow& window, Angle convergence, Take take) const {
+  const std::size_t cells = static_cast<std::size_t>(window.columns) * window.rows;
+  std::vector<std::uint16_t> room(cells * kBatch);
+  std::vector<const std::uint16_t*> steps;
+  int first = 0;
+  bool columns_now = false;
+  const auto flush = [&] {
+    if (!steps.empty()) take(first, HorizonBatch{steps, window.rows, window.columns, columns_now});
+    steps.clear();
+  };
+  for (int sector = 0; sector < dome_.sectors; ++sector) {
+    Heading near_heading{};
+    for (int k = 0; k < dome_.lines_per_sector; ++k) {
+      const int line = sector * dome_.lines_per_sector + k;
+      const GridAzimuth azimuth = to_grid(dome_.line_azimuth(line), convergence);
+      const Heading heading = heading_of(azimuth);
+      // The near rows are looked along once for a sector, at its middle line, unless the sector
+      // straddles two headings.
+      if (k == 0 || heading != near_heading) {
+        const int middle = sector * dome_.lines_per_sector + dome_.lines_per_sector / 2;
+        const GridAzimuth through = to_grid(dome_.line_azimuth(middle), convergence);
+        sweep.look_near(heading_of(through) == heading ? through : azimuth);
+        near_heading = heading;
+      }
+      if (steps.size() == kBatch || (!steps.empty() && columns_now != by_columns(heading))) flush();
+      if (steps.empty()) {
+        first = line;
+        columns_now = by_columns(heading);
+      }
+      std::uint16_t* place = room.data() + cells * steps.size();
+      sweep.look_far(azimuth, place);
+      steps.push_back(place);
+    }
+  }
+  flush();
+}
+
+void TileSolver::solve_level(HorizonSweep& sweep, Angle convergence, TileShares& out) const {
+  const std::size_t cells = out.usable.size();
+  const int blocks = level_.blocks();
+  std::vector<std::vector<std::uint32_t>> sums(blocks, std::vector<std::uint32_t>(cells * kColumnBlock, 0));
+  batches(sweep, out.window, convergence, [&](int first, const HorizonBatch& batch) {
+    std::vector<const std::uint16_t*> tables(batch.steps.size());
+    for (int block = 0; block < blocks; ++block) {
+      for (std::size_t i = 0; i < tables.size(); ++i)
+        tables[i] = level_.line(first + static_cast<int>(i), block);
+      accumulate_level(batch, tables, sums[block].data());
+    }
+  });
+  std::vector<float> units(level_.units().begin(), level_.units().end());
+  for (std::size_t cell = 0; cell < cells; ++cell) {
+    float* shares = out.shares.data() + cell * out.columns;
+    for (int c = 0; c < out.columns; ++c) {
+      const std::uint32_t lost = sums[c / kColumnBlock][cell * kColumnBlock + c % kColumnBlock];
+      shares[c] = std::max(0.0F, 1.0F - static_cast<float>(lost) * units[c]);
+    }
+  }
+}
+
+void TileSolver::solve_slope(HorizonSweep& sweep, Angle convergence, TileShares& out) const {
+  const CellWindow& window = out.window;
+  const std::size_t cells = out.usable.size();
+  const int width = slope_->padded();
+  // Rise of the ground per metre to east and north, by central differences.
+  const CellWindow around{window.column - 1, window.row - 1, window.columns + 2, window.rows + 2};
+  const Grid<float> ground = terrain_.ground(around);
+  std::vector<float> east(cells), north(cells);
+  const float per_m = static_cast<float>(0.5 / sweep_options_.cell_m);
+  const auto height = [&](int column, int row, float otherwise) {
+    const float value = ground.at(column, row);
+    return std::isnan(value) ? otherwise : value;
+  };
+  for (int row = 0; row < window.rows; ++row) {
+    for (int column = 0; column < window.columns; ++column) {
+      const std::size_t cell = static_cast<std::size_t>(row) * window.columns + column;
+      const float here = height(column + 1, row + 1, 0.0F);
+      east[cell] = (height(column + 2, row + 1, here) - height(column, row + 1, here)) * per_m;
+      north[cell] = (height(column + 1, row, here) - height(column + 1, row + 2, here)) * per_m;
+    }
+  }
+  // Open light on the plane: level - rise·facing summed over the lines, linear in the rise.
+  std::vector<double> open_east(width, 0.0), open_north(width, 0.0);
+  std::vector<float> towards_east(dome_.lines()), towards_north(dome_.lines());
+  for (int line = 0; line < dome_.lines(); ++line) {
+    const Angle azimuth = to_grid(dome_.line_azimuth(line), convergence).from_grid_north;
+    towards_east[line] = static_cast<float>(sin(azimuth));
+    towards_north[line] = static_cast<float>(cos(azimuth));
+    for (int c = 0; c < width; ++c) {
+      open_east[c] += sin(azimuth) * slope_->open_facing(line)[c];
+      open_north[c] += cos(azimuth) * slope_->open_facing(line)[c];
+    }
+  }
+  std::vector<float> sums(cells * width, 0.0F);
+  batches(sweep, window, convergence, [&](int first, const HorizonBatch& batch) {
+    std::vector<const float*> tables(batch.steps.size());
+    for (std::size_t i = 0; i < tables.size(); ++i) tables[i] = slope_->line(first + static_cast<int>(i));
+    SlopeTables slope{tables,
+                      width,
+                      east.data(),
+                      north.data(),
+                      std::span(towards_east).subspan(first, tables.size()),
+                      std::span(towards_north).subspan(first, tables.size())};
+    accumulate_slope(batch, slope, sums.data());
+  });
+  for (std::size_t cell = 0; cell < cells; ++cell) {
+    const double upright =
+        1.0 / std::sqrt(1.0 + double(east[cell]) * east[cell] + double(north[cell]) * north[cell]);
+    for (int c = 0; c < out.columns; ++c) {
+      const double open = 1.0 - east[cell] * open_east[c] - north[cell] * open_north[c];
+      const bool dark = level_.units()[c] == 0.0;
+      out.shares[cell * out.columns + c] =
+          dark ? 1.0F : static_cast<float>(std::max(0.0, upright * (open - sums[cell * width + c])));
+    }
+  }
+}
+
+TileShares TileSolver::solve(const TerrainTile& tile, Angle convergence) const {
+  TileShares out;
+  out.window = tile.window;
+  out.columns = columns();
+  out.usable = tile.usable;
+  out.shares.resize(tile.usable.size() * out.columns);
+  HorizonSweep sweep(tile, sweep_options_);
+  if (plane_ == ReceiverPlane::level)
+    solve_level(sweep, convergence, out);
+  else
+    solve_slope(sweep, convergence, out);
+  return out;
+}
+
+}  // namespace sunfall

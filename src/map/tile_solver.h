@@ -1,0 +1,51 @@
+#pragma once
+// Shares of one tile: passage times dome light, without ever storing the passage.
+
+#include <cstdint>
+#include <optional>
+#include <vector>
+
+#include "map/loss_table.h"
+#include "shade/horizon_sweep.h"
+#include "shade/terrain.h"
+#include "sunfall/dome.h"
+#include "sunfall/plan.h"
+
+namespace sunfall {
+
+// Per cell (row by row) and column (beam of every period, then sky of every period), the fraction
+// of the open field's light that arrives.
+struct TileShares {
+  CellWindow window;
+  int columns = 0;
+  std::vector<char> usable;   // 0: no receiver here
+  std::vector<float> shares;  // [cell][columns]
+  const float* of(std::size_t cell) const { return shares.data() + cell * columns; }
+};
+
+class TileSolver {
+ public:
+  // `plane`: level receivers, or receivers in the plane of the ground.
+  TileSolver(const Terrain& terrain, const DomeLight& light, ReceiverPlane plane);
+
+  // May be called from several threads. `convergence` is that of the tile's centre.
+  TileShares solve(const TerrainTile& tile, Angle convergence) const;
+
+  int columns() const { return level_.columns(); }
+
+ private:
+  void solve_level(HorizonSweep& sweep, Angle convergence, TileShares& out) const;
+  void solve_slope(HorizonSweep& sweep, Angle convergence, TileShares& out) const;
+  // Calls take(first line, batch) with the horizons of several lines at a time.
+  template <typename Take>
+  void batches(HorizonSweep& sweep, const CellWindow& window, Angle convergence, Take take) const;
+
+  const Terrain& terrain_;
+  Dome dome_;
+  ReceiverPlane plane_;
+  LossTable level_;                      // units and column count also serve sloped receivers
+  std::optional<SlopeLossTable> slope_;  // only for receivers in the plane of the ground
+  SweepOptions sweep_options_;
+};
+
+}  // namespace sunfall

@@ -1,0 +1,218 @@
+#include "shade/horizon_sweep.h"
+
+#include <algorithm>
+#include <cmath>
+
+#include "dome/horizon_steps.h"
+#include "shade/row_loops.h"
+
+namespace sunfall {
+namespace {
+
+// The same grid, stored column by column.
+LevelGrid turned(const LevelGrid& grid) {
+  LevelGrid out{grid.level, grid.window, std::vector<float>(grid.heights.size())};
+  const int columns = grid.window.columns, rows = grid.window.rows;
+  constexpr int kBlock = 32;
+  for (int row0 = 0; row0 < rows; row0 += kBlock) {
+    for (int column0 = 0; column0 < columns; column0 += kBlock) {
+      for (int row = row0; row < std::min(row0 + kBlock, rows); ++row) {
+        for (int column = column0; column < std::min(column0 + kBlock, columns); ++column) {
+          out.heights[static_cast<std::size_t>(column) * rows + row] =
+              grid.heights[static_cast<std::size_t>(row) * columns + column];
+        }
+      }
+    }
+  }
+  return out;
+}
+
+}  // namespace
+
+Heading heading_of(GridAzimuth azimuth) {
+  const double east = sin(azimuth.from_grid_north), north = cos(azimuth.from_grid_north);
+  if (std::abs(north) >= std::abs(east)) return north > 0 ? Heading::north : Heading::south;
+  return east > 0 ? Heading::east : Heading::west;
+}
+
+HorizonSweep::HorizonSweep(const TerrainTile& tile, const SweepOptions& options)
+    : tile_(tile), options_(options), turned_(tile.levels.size()), kernel_(best_sweep_kernel()) {}
+
+// v runs east for light from north and south, and south for light from east and west.
+HorizonSweep::Direction HorizonSweep::direction_of(GridAzimuth azimuth) const {
+  const double east = sin(azimuth.from_grid_north), north = cos(azimuth.from_grid_north);
+  Direction out{heading_of(azimuth)};
+  const double across = by_columns(out.heading) ? north : -east;
+  const double along = std::max(std::abs(east), std::abs(north));
+  out.lean = static_cast<float>(across / along);
+  out.row_length = static_cast<float>(1.0 / along);
+  return out;
+}
+
+const LevelGrid& HorizonSweep::oriented(int level, bool columns) {
+  if (!columns) return tile_.levels[level];
+  if (turned_[level].heights.empty()) turned_[level] = turned(tile_.levels[level]);
+  return turned_[level];
+}
+
+HorizonSweep::March& HorizonSweep::march(Heading heading) {
+  March& m = marches_[static_cast<int>(heading)];
+  if (m.ready) return m;
+  m.columns = by_columns(heading);
+  m.reversed = heading == Heading::south || heading == Heading::east;
+  m.rows = m.columns ? tile_.window.columns : tile_.window.rows;
+  m.width = m.columns ? tile_.window.rows : tile_.window.columns;
+  for (int level = static_cast<int>(tile_.levels.size()) - 1; level >= 0; --level) add_level_rows(m, level);
+  align_rows(m);
+  turn_receivers(m);
+  m.ready = true;
+  return m;
+}
+
+// Level n fills the ring between kFullReach·2^(n-1) and kFullReach·2^n before the tile; level 0
+// reaches from there to the tile's last row. A finer level starts where the last coarser cell ends.
+void HorizonSweep::add_level_rows(March& m, int level) {
+  const LevelGrid& grid = oriented(level, m.columns);
+  const float size = static_cast<float>(1 << level);
+  const int lines = m.columns ? grid.window.columns : grid.window.rows;  // grid lines along u
+  const int count = m.columns ? grid.window.rows : grid.window.columns;  // values along v
+  const int first_line = m.columns ? grid.window.column : grid.window.row;
+  const int first_value = m.columns ? grid.window.row : grid.window.column;
+  const int tile_u = m.columns ? tile_.window.column : tile_.window.row;
+  const int tile_v = m.columns ? tile_.window.row : tile_.window.column;
+  // A cell's centre in map cells, counted from the centre of the tile's first cell.
+  const auto centre = [size](int cell, int tile) {
+    return (static_cast<float>(cell) + 0.5F) * size - 0.5F - static_cast<float>(tile);
+  };
+  const float outer = -static_cast<float>(kFullReach << level);
+  const float inner =
+      level == 0 ? static_cast<float>(m.rows) : -static_cast<float>(kFullReach << (level - 1));
+
+  for (int i = 0; i < lines; ++i) {
+    const int line = m.reversed ? lines - 1 - i : i;
+    const float place = centre(first_line + line, tile_u);
+    MarchRow row;
+    row.u = m.reversed ? static_cast<float>(m.rows - 1) - place : place;
+    const bool beyond_coarser = m.march_rows.empty() ? row.u >= outer : row.u - 0.5F * size >= m.covered_to;
+    if (!beyond_coarser || row.u >= inner) continue;
+    row.values = grid.heights.data() + static_cast<std::size_t>(line) * count;
+    row.count = count;
+    row.cell = size;
+    row.first_v = centre(first_value, tile_v);
+    m.march_rows.push_back(row);
+    m.covered_to = row.u + 0.5F * size;
+  }
+}
+
+// The kernel pairs rows from the front; the row with u = 0 must begin a pair.
+void HorizonSweep::align_rows(March& m) {
+  const std::size_t before = m.march_rows.size() - static_cast<std::size_t>(m.rows);
+  if (before % 2 != 0) {
+    MarchRow empty;
+    empty.u = m.march_rows.front().u - 1.0F;
+    m.march_rows.insert(m.march_rows.begin(), empty);
+  }
+  m.tile_row = static_cast<int>(m.march_rows.size()) - m.rows;
+  for (int u = -kNearRows; u < m.rows; ++u) {
+    const MarchRow& row = m.march_rows[static_cast<std::size_t>(m.tile_row + u)];
+    m.near.push_back(row.values - static_cast<std::ptrdiff_t>(row.first_v));
+  }
+}
+
+void HorizonSweep::turn_receivers(March& m) {
+  const int margin = kReceiverMargin;
+  m.receiver_stride = m.width + 2 * margin;
+  m.receivers.resize(static_cast<std::size_t>(m.rows + 2 * margin) * m.receiver_stride);
+  for (int u = -margin; u < m.rows + margin; ++u) {
+    const int place = (m.reversed ? m.rows - 1 - u : u) + margin;
+    for (int v = -margin; v < m.width + margin; ++v) {
+      const int row = m.columns ? v + margin : place, column = m.columns ? place : v + margin;
+      m.receivers[static_cast<std::size_t>(u + margin) * m.receiver_stride + v + margin] =
+          tile_.receivers[static_cast<std::size_t>(row) * tile_.receiver_window.columns + column];
+    }
+  }
+}
+
+void HorizonSweep::look_near(GridAzimuth azimuth) {
+  const Direction direction = direction_of(azimuth);
+  const March& m = march(direction.heading);
+  near_heading_ = direction.heading;
+  near_.resize(static_cast<std::size_t>(m.rows) * m.width);
+  const float scale = static_cast<float>(1.0 / (options_.cell_m * direction.row_length));
+  for (int u = 0; u < m.rows; ++u) {
+    NearLook look;
+    look.eyes = m.receivers.data() + static_cast<std::size_t>(u + kReceiverMargin) * m.receiver_stride +
+                kReceiverMargin;
+    look.rows = m.near.data() + u;  // rows[kNearRows - n] lies n rows before
+    look.lean = direction.lean;
+    look.tangent_per_slope = scale;
+    look.width = m.width;
+    look.out = near_.data() + static_cast<std::size_t>(u) * m.width;
+    look_along_near_rows(look);
+  }
+}
+
+void HorizonSweep::sweep_far(const March& m, const Direction& direction, int first_line, int blocks) {
+  const double step_m = options_.cell_m * direction.row_length;
+  const double bend = step_m * step_m * (1.0 - options_.refraction) / (2.0 * options_.earth_radius_m);
+  std::vector<MarchRow> rows = m.march_rows;
+  for (MarchRow& row : rows) row.sink = static_cast<float>(bend * row.u * row.u);
+  const std::size_t nodes = rows.size() / 2 + 2;
+  parent_height_.resize(nodes * kLinesPerBlock);
+  parent_code_.resize(nodes * kLinesPerBlock);
+  far_stride_ = blocks * kLinesPerBlock;
+  far_.assign(static_cast<std::size_t>(node_rows(m.rows)) * far_stride_, 0.0F);
+
+  SweepJob job;
+  job.rows = rows.data();
+  job.row_count = static_cast<int>(rows.size());
+  job.tile_row = m.tile_row;
+  job.lean = direction.lean;
+  job.first_line = first_line;
+  job.blocks = blocks;
+  job.receivers =
+      m.receivers.data() + static_cast<std::size_t>(kReceiverMargin) * m.receiver_stride + kReceiverMargin;
+  job.receiver_stride = m.receiver_stride;
+  job.tile_rows = m.rows;
+  job.tile_columns = m.width;
+  job.tangent_per_slope = static_cast<float>(1.0 / step_m);
+  job.bend = static_cast<float>(bend);
+  job.far = far_.data();
+  job.far_stride = far_stride_;
+  job.scratch = {parent_height_.data(), parent_code_.data()};
+  kernel_(job);
+}
+
+void HorizonSweep::look_far(GridAzimuth azimuth, std::uint16_t* steps) {
+  const Direction direction = direction_of(azimuth);
+  const March& m = march(direction.heading);
+  const float last_u = static_cast<float>((node_rows(m.rows) - 1) * kNodeStride);
+  const int first_line = static_cast<int>(std::floor(std::min(0.0F, -direction.lean * last_u))) - 1;
+  const int last_line =
+      static_cast<int>(std::ceil(static_cast<float>(m.width) + std::max(0.0F, -direction.lean * last_u))) + 1;
+  const int blocks = (last_line - first_line + 1 + kLinesPerBlock) / kLinesPerBlock;
+  sweep_far(m, direction, first_line, blocks);
+  for (int u = 0; u < m.rows; ++u) {
+    FarRead read;
+    const int node = u / kNodeStride;
+    const int next = std::min(node + 1, node_rows(m.rows) - 1);
+    read.weight = static_cast<float>(u % kNodeStride) / kNodeStride;
+    const float shift0 =
+        -direction.lean * static_cast<float>(node * kNodeStride) - static_cast<float>(first_line);
+    const float shift1 =
+        -direction.lean * static_cast<float>(next * kNodeStride) - static_cast<float>(first_line);
+    read.first =
+        far_.data() + static_cast<std::size_t>(node) * far_stride_ + static_cast<int>(std::floor(shift0));
+    read.first_fraction = shift0 - std::floor(shift0);
+    read.second =
+        far_.data() + static_cast<std::size_t>(next) * far_stride_ + static_cast<int>(std::floor(shift1));
+    read.second_fraction = shift1 - std::floor(shift1);
+    read.near = near_.data() + static_cast<std::size_t>(u) * m.width;
+    read.width = m.width;
+    const int row = m.reversed ? m.rows - 1 - u : u;
+    read.steps = steps + static_cast<std::size_t>(row) * m.width;
+    combine_near_and_far(read);
+  }
+}
+
+}  // namespace sunfall
