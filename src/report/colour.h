@@ -34,18 +34,19 @@ double contrast(const Colour& one, const Colour& other);
 // "#rrggbb".
 std::string hexadecimal(const Colour& colour);
 
-// The colours of everything that is not light.
+// The colours of everything that is not light, as bytes, which every renderer rounds alike.
 namespace ink {
-inline constexpr Colour kPaper{1.0, 1.0, 1.0};
-inline constexpr Colour kText{0.13, 0.15, 0.17};
-inline constexpr Colour kQuiet{0.36, 0.39, 0.42};
-inline constexpr Colour kRule{0.80, 0.82, 0.83};
-inline constexpr Colour kAccent{0.65, 0.28, 0.11};
-inline constexpr Colour kSky{0.36, 0.53, 0.56};
-inline constexpr Colour kLand{0.29, 0.33, 0.32};
-inline constexpr Colour kAir{0.96, 0.972, 0.978};
-inline constexpr Colour kHatch{0.62, 0.64, 0.66};
-inline constexpr Colour kHatchGround{0.95, 0.95, 0.95};
+constexpr Colour of(int red, int green, int blue) { return {red / 255.0, green / 255.0, blue / 255.0}; }
+inline constexpr Colour kPaper = of(255, 255, 255);
+inline constexpr Colour kText = of(33, 38, 43);
+inline constexpr Colour kQuiet = of(92, 99, 107);
+inline constexpr Colour kRule = of(204, 209, 212);
+inline constexpr Colour kAccent = of(166, 71, 28);
+inline constexpr Colour kSky = of(92, 135, 143);
+inline constexpr Colour kLand = of(74, 84, 82);
+inline constexpr Colour kAir = of(245, 248, 250);
+inline constexpr Colour kHatch = of(128, 133, 138);
+inline constexpr Colour kHatchGround = of(242, 242, 242);
 }  // namespace ink
 
 // The colour at `share` of the scale, 0 dark to 1 bright; clamped outside.

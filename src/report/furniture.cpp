@@ -89,12 +89,13 @@ double draw_north_arrow(Canvas& canvas, Point top_left, double convergence_deg) 
   const Point letter = at(0, kReach + 18.0);
   canvas.text({letter.x, letter.y + 8.0}, "N", {22.0, true, ink::kText, Align::centre});
   const double x = top_left.x + 84.0;
-  canvas.text({x, centre.y + 2.0}, "true north", {20.0});
+  canvas.text({x, centre.y - 12.0}, "true north", {20.0});
   const double off = std::abs(convergence_deg);
-  const std::string grid = off < 0.05 ? "grid north is up, the same"
-                                      : fmt::format("grid north is up, {:.1f}° {}", off,
-                                                    convergence_deg > 0.0 ? "east of it" : "west of it");
-  canvas.text({x, centre.y + 30.0}, grid, {17.0, false, ink::kQuiet});
+  const char* side = convergence_deg > 0.0 ? "east" : "west";
+  const std::string grid = off < 0.05 ? "the same" : fmt::format("{:.1f}° {} of it", off, side);
+  const TextStyle note{17.0, false, ink::kQuiet};
+  canvas.text({x, centre.y + 14.0}, "grid north is up,", note);
+  canvas.text({x, centre.y + 38.0}, grid, note);
   return top_left.y + 110.0;
 }
 

@@ -18,8 +18,8 @@ constexpr double kLeastMapHeight = 8.0;
 constexpr double kLeastWidth = 1500.0;   // the heading's needs
 constexpr double kLeastHeight = 1320.0;  // the legend column's needs
 constexpr double kWideCaption = 330.0;   // from here on the caption takes two lines instead of three
-
-double caption_height_for(double panel_width) { return panel_width >= kWideCaption ? 72.0 : 98.0; }
+constexpr double kWideCaptionHeight = 72.0;
+constexpr double kNarrowCaptionHeight = 98.0;
 
 // The largest maps in so many columns; map_width is 0 where they do not fit.
 SheetLayout arrange(const SheetRequest& request, int columns) {
@@ -31,13 +31,17 @@ SheetLayout arrange(const SheetRequest& request, int columns) {
   const double room_x = request.most_width - 2.0 * kPageMargin - kSideWidth - kSideGap;
   const double room_y = request.most_height - 2.0 * kPageMargin - kHeadingHeight;
   const double panel = (room_x - (columns - 1) * kGapX) / columns;
-  layout.caption_height = caption_height_for(panel);
-  const double tallest = (room_y - (layout.rows - 1) * kGapY) / layout.rows - layout.caption_height;
-  if (panel < kLeastPanel || tallest < kLeastMapHeight) return layout;
-  layout.map_width = std::min(panel, tallest * request.aspect);
-  layout.map_height = layout.map_width / request.aspect;
-  layout.panel_width = std::max(layout.map_width, std::min(panel, kLeastPanel));
-  layout.caption_height = caption_height_for(layout.panel_width);
+  if (panel < kLeastPanel) return layout;
+  // Maps that the height makes narrower may need the taller caption, which leaves less height.
+  for (const double caption : {kWideCaptionHeight, kNarrowCaptionHeight}) {
+    const double tallest = (room_y - (layout.rows - 1) * kGapY) / layout.rows - caption;
+    if (tallest < kLeastMapHeight) continue;
+    layout.caption_height = caption;
+    layout.map_width = std::min(panel, tallest * request.aspect);
+    layout.map_height = layout.map_width / request.aspect;
+    layout.panel_width = std::max(layout.map_width, std::min(panel, kLeastPanel));
+    if (layout.panel_width >= kWideCaption) break;
+  }
   return layout;
 }
 
