@@ -6,6 +6,7 @@
 #include <cstdint>
 #include <limits>
 #include <string>
+#include <utility>
 #include <vector>
 
 namespace sunfall {
@@ -60,8 +61,10 @@ class Grid {
   int rows() const { return frame_.rows; }
   T& at(int column, int row) { return values_[index(column, row)]; }
   const T& at(int column, int row) const { return values_[index(column, row)]; }
-  std::vector<T>& values() { return values_; }
-  const std::vector<T>& values() const { return values_; }
+  std::vector<T>& values() & { return values_; }
+  const std::vector<T>& values() const& { return values_; }
+  // By value from a temporary, so that a loop over `read(...).values()` does not outlive its grid.
+  std::vector<T> values() && { return std::move(values_); }
 
  private:
   std::size_t index(int column, int row) const {

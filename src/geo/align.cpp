@@ -68,13 +68,8 @@ void require_same_grid(const RasterSource& other, const RasterSource& reference)
 
 MapBox extent_in(const std::filesystem::path& source, const std::string& role, const GridFrame& frame) {
   const HeightRaster raster(source, role);
+  raster.require_place();
   GdalGuard guard;
-  const OGRSpatialReference* crs = raster.dataset().GetSpatialRef();
-  if (crs == nullptr || !raster.transform()) {
-    throw Error(ErrorKind::data,
-                {"the raster has no place on the map", raster.where(), "no CRS or no corners",
-                 "Declare them: gdal_edit.py -a_srs EPSG:CODE -a_ullr WEST NORTH EAST SOUTH FILE"});
-  }
   const std::array<double, 6>& t = *raster.transform();
   const double x[] = {0.0, static_cast<double>(raster.columns())};
   const double y[] = {0.0, static_cast<double>(raster.rows())};
@@ -87,7 +82,7 @@ MapBox extent_in(const std::filesystem::path& source, const std::string& role, c
              std::max(own.north, north)};
     }
   }
-  const Transformation there = transformation(plane_part(*crs), crs_from_wkt(frame.crs_wkt), raster.where());
+  const Transformation there = transformation(*raster.crs(), crs_from_wkt(frame.crs_wkt), raster.where());
   MapBox box;
   if (there->TransformBounds(own.west, own.south, own.east, own.north, &box.west, &box.south, &box.east,
                              &box.north, kEdgePoints) == 0) {

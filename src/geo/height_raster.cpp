@@ -1,10 +1,14 @@
 #include "geo/height_raster.h"
 
+#include <cpl_string.h>
+
 #include <algorithm>
 #include <cctype>
 #include <cmath>
 #include <cstdint>
+#include <fstream>
 #include <limits>
+#include <string_view>
 #include <type_traits>
 #include <vector>
 
@@ -21,6 +25,7 @@ namespace {
 constexpr double kLowest_m = -500.0;
 constexpr double kHighest_m = 9000.0;
 constexpr int kBufferCells = 4'000'000;
+constexpr std::size_t kLongestProjection_bytes = 65536;
 
 bool is_metre(std::string unit) {
   std::transform(unit.begin(), unit.end(), unit.begin(),
@@ -40,6 +45,25 @@ void check_height_unit(GDALDataset& dataset, const std::string& where) {
   throw Error(ErrorKind::data, {"heights must be in metres", where, fmt::format("heights in '{}'", unit),
                                 "Convert them, for feet: gdal_calc.py -A IN.tif --calc=A*0.3048 "
                                 "--outfile OUT.tif, and declare the unit: gdal_edit.py -units m OUT.tif"});
+}
+
+// An ASCII grid's CRS stands in a .prj file beside it. GDAL looks for that only together with the
+// side-car files that it must not look for, so it is read here.
+std::optional<OGRSpatialReference> crs_of(GDALDataset& dataset, const std::filesystem::path& file) {
+  const OGRSpatialReference* own = dataset.GetSpatialRef();
+  if (own != nullptr && !own->IsEmpty()) return plane_part(*own);
+  if (std::string_view(dataset.GetDriverName()) != "AAIGrid") return std::nullopt;
+  std::filesystem::path projection = file;
+  std::ifstream in(projection.replace_extension(".prj"), std::ios::binary);
+  std::string text(kLongestProjection_bytes, '\0');
+  in.read(text.data(), static_cast<std::streamsize>(text.size()));
+  text.resize(static_cast<std::size_t>(in.gcount()));
+  OGRSpatialReference crs;
+  CPLStringList lines(CSLTokenizeString2(text.c_str(), "\r\n", 0));
+  if (crs.importFromWkt(text.c_str()) != OGRERR_NONE && crs.importFromESRI(lines.List()) != OGRERR_NONE) {
+    return std::nullopt;
+  }
+  return plane_part(crs);
 }
 
 HeightCoding coding_of(GDALRasterBand& band) {
@@ -141,8 +165,17 @@ HeightRaster::HeightRaster(const std::filesystem::path& file, const std::string&
       coding_(coding_of(*band_)) {
   GdalGuard guard;
   check_height_unit(*dataset_, where_);
+  crs_ = crs_of(*dataset_, file);
   std::array<double, 6> transform{};
   if (dataset_->GetGeoTransform(transform.data()) == CE_None) transform_ = transform;
+}
+
+void HeightRaster::require_place() const {
+  if (crs_ && transform_) return;
+  throw Error(ErrorKind::data,
+              {"the raster does not say where on the map it lies", where_,
+               crs_ ? "no corners" : "no coordinate reference system",
+               "Declare what is missing: gdal_edit.py -a_srs EPSG:CODE -a_ullr WEST NORTH EAST SOUTH FILE"});
 }
 
 void HeightRaster::read(const CellWindow& window, float* heights, std::size_t stride) const {

@@ -27,9 +27,12 @@ class HeightRaster {
 
   int columns() const { return dataset_->GetRasterXSize(); }
   int rows() const { return dataset_->GetRasterYSize(); }
-  GDALDataset& dataset() const { return *dataset_; }
+  // The plane part of the CRS, east first, where the file (or an ASCII grid's .prj) gives one.
+  const std::optional<OGRSpatialReference>& crs() const { return crs_; }
   // The affine transform from (column, row) to the map, where the file has one.
   const std::optional<std::array<double, 6>>& transform() const { return transform_; }
+  // For what needs both: throws Error(data) unless the file says where on the map it lies.
+  void require_place() const;
   // "ground.tif (ground)", for messages.
   const std::string& where() const { return where_; }
 
@@ -49,6 +52,7 @@ class HeightRaster {
   GDALDatasetUniquePtr dataset_;
   GDALRasterBand* band_;
   HeightCoding coding_;
+  std::optional<OGRSpatialReference> crs_;
   std::optional<std::array<double, 6>> transform_;
 };
 

@@ -53,10 +53,9 @@ GDALDatasetUniquePtr open_layer(const std::filesystem::path& layer) {
   start_geo();
   GdalGuard guard;
   static constexpr const char* kDrivers[] = {"GTiff", nullptr};
-  static constexpr const char* kNoSiblings[] = {nullptr};
   GDALDatasetUniquePtr dataset(GDALDataset::Open(std::filesystem::absolute(layer).c_str(),
                                                  GDAL_OF_RASTER | GDAL_OF_READONLY | GDAL_OF_VERBOSE_ERROR,
-                                                 kDrivers, nullptr, kNoSiblings));
+                                                 kDrivers));
   if (!dataset || dataset->GetRasterCount() != 1) {
     guard.fail(ErrorKind::io, "the layer cannot be opened", layer.string(), "Run the map again");
   }

@@ -18,12 +18,10 @@ constexpr double kMostCells = 4e10;
 // GDAL decodes a compressed block as a whole, so one block must fit into memory.
 constexpr double kLargestBlock_bytes = 1024.0 * 1024.0 * 1024.0;
 
-constexpr const char* kNoSiblings[] = {nullptr};
-
 GDALDatasetUniquePtr open_with(const std::string& file, unsigned flags, const char* const* drivers,
                                const char* const* options) {
-  return GDALDatasetUniquePtr(GDALDataset::Open(
-      file.c_str(), flags | GDAL_OF_READONLY | GDAL_OF_VERBOSE_ERROR, drivers, options, kNoSiblings));
+  return GDALDatasetUniquePtr(
+      GDALDataset::Open(file.c_str(), flags | GDAL_OF_READONLY | GDAL_OF_VERBOSE_ERROR, drivers, options));
 }
 
 std::string size_text(const GDALDataset& dataset) {

@@ -14,7 +14,7 @@
 namespace sunfall {
 namespace {
 
-// Cells count as square within this part of their side.
+// Cells count as square and upright within this part of their side.
 constexpr double kSquareTolerance = 1e-4;
 // What small skews and unequal sides may add up to over the whole raster, in cells.
 constexpr double kMostDrift_cells = 0.5;
@@ -46,13 +46,12 @@ std::string projecting_command(const HeightRaster& raster, const OGRSpatialRefer
                      code);
 }
 
-OGRSpatialReference checked_crs(const HeightRaster& raster) {
-  const OGRSpatialReference* given = raster.dataset().GetSpatialRef();
-  if (given == nullptr || given->IsEmpty()) {
+const OGRSpatialReference& checked_crs(const HeightRaster& raster) {
+  if (!raster.crs()) {
     refuse(raster, "the raster has no coordinate reference system", "none",
            "Declare the one that it was made in: gdal_edit.py -a_srs EPSG:CODE FILE");
   }
-  OGRSpatialReference crs = plane_part(*given);
+  const OGRSpatialReference& crs = *raster.crs();
   if (crs.IsGeographic()) {
     refuse(raster, "the raster is in degrees", crs_label(crs), projecting_command(raster, crs));
   }
@@ -71,9 +70,11 @@ OGRSpatialReference checked_crs(const HeightRaster& raster) {
 }
 
 void check_transform(const HeightRaster& raster, const std::array<double, 6>& t) {
-  const double skew_cells = std::max(std::abs(t[2]) * raster.rows(), std::abs(t[4]) * raster.columns()) /
-                            std::max(std::abs(t[1]), std::abs(t[5]));
-  if (!(skew_cells <= kMostDrift_cells)) {
+  const double cell = std::max(std::abs(t[1]), std::abs(t[5]));
+  const double skew = std::max(std::abs(t[2]), std::abs(t[4])) / cell;
+  const double skew_cells =
+      std::max(std::abs(t[2]) * raster.rows(), std::abs(t[4]) * raster.columns()) / cell;
+  if (!(skew <= kSquareTolerance && skew_cells <= kMostDrift_cells)) {
     refuse(raster, "the raster is rotated",
            fmt::format("row and column shear {} and {} m a cell", t[2], t[4]), kMakeNorthUp);
   }
@@ -90,7 +91,7 @@ void check_transform(const HeightRaster& raster, const std::array<double, 6>& t)
 
 GridFrame checked_frame(const HeightRaster& raster) {
   GdalGuard guard;
-  const OGRSpatialReference crs = checked_crs(raster);
+  const OGRSpatialReference& crs = checked_crs(raster);
   if (!raster.transform()) {
     refuse(raster, "the raster does not say where it lies", "no geotransform",
            "Give its corners: gdal_edit.py -a_ullr WEST NORTH EAST SOUTH FILE");

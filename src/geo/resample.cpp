@@ -33,17 +33,12 @@ struct DestroyWarpOptions {
 using WarpOptions = std::unique_ptr<GDALWarpOptions, DestroyWarpOptions>;
 
 std::unique_ptr<LazyRaster> checked_source(const HeightRaster& raster) {
-  const OGRSpatialReference* crs = raster.dataset().GetSpatialRef();
-  if (crs == nullptr || !raster.transform()) {
-    throw Error(ErrorKind::data,
-                {"the raster has no place on the map", raster.where(), "no CRS or no corners",
-                 "Declare them: gdal_edit.py -a_srs EPSG:CODE -a_ullr WEST NORTH EAST SOUTH FILE"});
-  }
+  raster.require_place();
   LazyRasterSpec spec;
   spec.columns = raster.columns();
   spec.rows = raster.rows();
   spec.transform = *raster.transform();
-  spec.crs = plane_part(*crs);
+  spec.crs = *raster.crs();
   spec.nodata = kMissing;
   spec.read = [&raster](const CellWindow& window, float* values, int stride) {
     raster.read(window, values, static_cast<std::size_t>(stride));
