@@ -133,28 +133,24 @@ TEST(RasterSource, WideTypesKeepTheirNodata) {
   }
 }
 
-// Common in the wild: the lowest float printed with too few digits, which lies beyond float.
-TEST(RasterSource, NodataBeyondFloatStillMatches) {
+// A raster of two cells: `nodata`, stored as `stored`, and 3.
+void expect_missing(double nodata, double stored) {
   RasterOrder order;
-  order.nodata = -3.40282347e+38;
+  order.nodata = nodata;
   order.columns = 2;
   order.rows = 1;
-  order.values = {std::numeric_limits<float>::lowest(), 3.0};
+  order.values = {stored, 3.0};
   const Grid<float> grid = read_order(order);
   EXPECT_TRUE(std::isnan(grid.at(0, 0)));
   EXPECT_EQ(grid.at(1, 0), 3.0F);
 }
 
-TEST(RasterSource, NanIsMissingWhereDeclared) {
-  RasterOrder order;
-  order.columns = 2;
-  order.rows = 1;
-  order.values = {kNan, 3.0};
-  order.nodata = kNan;
-  const Grid<float> grid = read_order(order);
-  EXPECT_TRUE(std::isnan(grid.at(0, 0)));
-  EXPECT_EQ(grid.at(1, 0), 3.0F);
+// Common in the wild: the lowest float printed with too few digits, which lies beyond float.
+TEST(RasterSource, NodataBeyondFloatStillMatches) {
+  expect_missing(-3.40282347e+38, std::numeric_limits<float>::lowest());
 }
+
+TEST(RasterSource, NanIsMissingWhereDeclared) { expect_missing(kNan, kNan); }
 
 TEST(RasterSource, AllNodataReadsAsAllMissing) {
   RasterOrder order;
