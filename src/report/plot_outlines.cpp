@@ -86,7 +86,7 @@ void write_id(Canvas& canvas, const Box& map, const std::vector<Ring>& rings, co
   const Point place = label_place(rings, bounds);
   const Point baseline{place.x, place.y + 0.36 * style.size};
   const Box label = canvas.measure(baseline, id, style);
-  const bool fits = label.width <= 0.92 * bounds.width && label.height <= bounds.height;
+  const bool fits = label.width <= 0.85 * bounds.width && label.height <= 0.8 * bounds.height;
   if (fits && map.holds(label) && canvas.is_free(label.grown(2.0))) canvas.text(baseline, id, style);
 }
 

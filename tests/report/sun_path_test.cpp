@@ -11,7 +11,18 @@
 namespace sunfall {
 namespace {
 
-using SunPathTest = FolderTest;
+constexpr Box kChartBox{100, 100, 720, 300};
+
+class SunPathTest : public FolderTest {
+ protected:
+  // The chart alone on a page.
+  Pixels drawn(const SunChart& chart, const SunPathPicture& picture) const {
+    Canvas canvas(folder_ / "chart.png", 900, 500);
+    draw_sun_chart(canvas, chart, picture);
+    canvas.save();
+    return Pixels(folder_ / "chart.png");
+  }
+};
 
 // The sun's path by spherical trigonometry, good enough to draw.
 SunDayPath path_of(const std::string& name, double latitude_deg, double declination_deg) {
@@ -93,13 +104,12 @@ TEST_F(SunPathTest, WorksWithNothingToShow) {
 }
 
 TEST_F(SunPathTest, TheChartTurnsToTheEquator) {
-  const Box box{100, 100, 720, 300};
-  const SunChart northern(box, picture_of(51.97, 180.0));
+  const SunChart northern(kChartBox, picture_of(51.97, 180.0));
   EXPECT_DOUBLE_EQ(northern.at(180.0, 0.0).x, 460.0);
   EXPECT_DOUBLE_EQ(northern.at(90.0, 0.0).x, 280.0);
   EXPECT_DOUBLE_EQ(northern.top_elevation_deg(), 70.0);
   EXPECT_DOUBLE_EQ(northern.at(180.0, 35.0).y, 250.0);
-  const SunChart southern(box, picture_of(-33.9, 0.0));
+  const SunChart southern(kChartBox, picture_of(-33.9, 0.0));
   EXPECT_DOUBLE_EQ(southern.at(southern.on_chart(0.0), 0.0).x, 460.0);
   EXPECT_DOUBLE_EQ(southern.at(southern.on_chart(90.0), 0.0).x, 640.0);   // east to the right of north
   EXPECT_DOUBLE_EQ(southern.at(southern.on_chart(270.0), 0.0).x, 280.0);  // west to the left
@@ -112,12 +122,8 @@ TEST_F(SunPathTest, TheHorizonAndTheSunStandWhereTheyAre) {
     picture.days = {{"", {}}};
     for (int azimuth = 0; azimuth <= 360; ++azimuth)
       picture.days[0].points.push_back({azimuth % 360 * 1.0, 33.0, ""});
-    const Box box{100, 100, 720, 300};
-    Canvas canvas(folder_ / "a.png", 900, 500);
-    const SunChart chart(box, picture);
-    draw_sun_chart(canvas, chart, picture);
-    canvas.save();
-    const Pixels pixels(folder_ / "a.png");
+    const SunChart chart(kChartBox, picture);
+    const Pixels pixels = drawn(chart, picture);
     // The land lets 12 % of the air through; grid lines every 10 and 30 degrees are kept clear of.
     const auto mixed = [](double land, double air) { return 0.88 * land + 0.12 * air; };
     const Colour land{mixed(ink::kLand.red, ink::kAir.red), mixed(ink::kLand.green, ink::kAir.green),
@@ -147,12 +153,8 @@ TEST_F(SunPathTest, APathAcrossTheEdgeDoesNotCrossTheChart) {
   SunPathPicture picture = picture_of(-33.9, 180.0);  // turned the wrong way on purpose
   picture.horizon_deg.clear();
   picture.days = {{"", {{40.0, 36.0, ""}, {20.0, 36.0, ""}, {340.0, 36.0, ""}, {320.0, 36.0, ""}}}};
-  const Box box{100, 100, 720, 300};
-  Canvas canvas(folder_ / "a.png", 900, 500);
-  const SunChart chart(box, picture);
-  draw_sun_chart(canvas, chart, picture);
-  canvas.save();
-  const Pixels pixels(folder_ / "a.png");
+  const SunChart chart(kChartBox, picture);
+  const Pixels pixels = drawn(chart, picture);
   for (const double azimuth : {3.0, 15.0, 35.0, 325.0, 345.0, 357.0}) {
     const Point point = chart.at(azimuth, 36.0);
     EXPECT_EQ(pixels.at(point.x, point.y), rgb_of(ink::kAccent)) << azimuth;
