@@ -25,9 +25,7 @@ struct Dome {
   int lines() const { return sectors * lines_per_sector; }
   int steps() const { return bands * steps_per_band; }
   // The azimuth at the middle of a line's share of the sector. Line 0 starts at true north.
-  Azimuth line_azimuth(int line) const {
-    return {Angle::degrees(360.0 * (line + 0.5) / lines())};
-  }
+  Azimuth line_azimuth(int line) const { return {Angle::degrees(360.0 * (line + 0.5) / lines())}; }
 };
 
 // A named stretch of the year, both days included; from > to runs over New Year.
@@ -55,7 +53,9 @@ struct DomeLight {
 
   std::size_t index(int line, int step, std::size_t period) const {
     return (static_cast<std::size_t>(line) * static_cast<std::size_t>(dome.steps()) +
-            static_cast<std::size_t>(step)) * periods.size() + period;
+            static_cast<std::size_t>(step)) *
+               periods.size() +
+           period;
   }
 };
 

@@ -33,10 +33,10 @@ struct LightSeries {
   std::chrono::seconds utc_offset{0};  // local standard time minus UTC
   std::chrono::year first_year{2025};
   int years = 1;
-  SunTrack sun;                  // same steps
-  std::vector<LightStep> steps;  // same length as sun.mean_sine
-  std::string description;       // one line for people: "cloudless sky, Linke turbidity 3.0"
-  bool is_ceiling = false;       // a cloudless ceiling; labelled so everywhere
+  SunTrack sun;                    // same steps
+  std::vector<LightStep> steps;    // same length as sun.mean_sine
+  std::string description;         // one line for people: "cloudless sky, Linke turbidity 3.0"
+  bool is_ceiling = false;         // a cloudless ceiling; labelled so everywhere
   std::vector<std::string> notes;  // assumptions that were made for the user
 };
 

@@ -14,8 +14,8 @@
 namespace sunfall {
 
 struct MapOptions {
-  int jobs = 0;         // worker threads; 0 for as many as the machine has
-  int tile_cells = 512;  // side of a tile
+  int jobs = 0;                // worker threads; 0 for as many as the machine has
+  int tile_cells = 512;        // side of a tile
   bool reverse_tiles = false;  // last tile first; the result does not depend on it
 };
 
@@ -23,7 +23,7 @@ struct MapOptions {
 struct OpenField {
   std::vector<double> beam;  // mol m-2 d-1 per period
   std::vector<double> sky;
-  double year = 0.0;         // beam and sky over the year's mean day
+  double year = 0.0;  // beam and sky over the year's mean day
 };
 
 struct MapLayer {
@@ -44,7 +44,8 @@ struct MapResult {
 
 // Writes the rasters of the plan into `folder`, each whole or not at all. Light must be made for
 // the plan's place and its periods. Throws Error; on interruption, Error(interrupted).
-MapResult make_maps(const Plan& plan, const DomeLight& light, const std::map<std::string, std::string>& provenance,
-                    const std::filesystem::path& folder, const MapOptions& options, Progress& progress);
+MapResult make_maps(const Plan& plan, const DomeLight& light,
+                    const std::map<std::string, std::string>& provenance, const std::filesystem::path& folder,
+                    const MapOptions& options, Progress& progress);
 
 }  // namespace sunfall

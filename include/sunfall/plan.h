@@ -27,9 +27,9 @@ struct SitePlan {
 
 struct PlotsPlan {
   std::filesystem::path file;
-  std::string layer;                 // empty: the file's only layer
+  std::string layer;  // empty: the file's only layer
   std::string id = "id";
-  std::optional<std::string> crop;   // field that names each plot's crop
+  std::optional<std::string> crop;  // field that names each plot's crop
 };
 
 struct DomePlan {
@@ -46,7 +46,7 @@ struct Plan {
   std::string name;            // [plan] name, else the file's stem
   SitePlan site;
   LightSource light;
-  std::string light_where;     // "farm.toml:9 light.monthly_global", for errors found later
+  std::string light_where;  // "farm.toml:9 light.monthly_global", for errors found later
   LightOptions light_options;
   std::vector<Period> periods;  // the twelve months, then named seasons in the plan's order
   std::optional<PlotsPlan> plots;

@@ -4,7 +4,6 @@
 #include <cmath>
 
 #include "dome/sky_patch.h"
-#include "dome/sky_radiance.h"
 #include "sunfall/dome.h"
 
 namespace sunfall {
@@ -111,22 +110,6 @@ void add_beam(const LightSeries& series, std::size_t i, double mol, BeamBins& bi
   }
 }
 
-SkyState sky_state(const LightSeries& series, std::size_t i, const SkyDirection& middle) {
-  SkyState state;
-  state.sky_w_m2 = series.steps[i].sky_w;
-  const double sine = std::max<double>(series.sun.mean_sine[i], 1e-3);
-  state.beam_normal_w_m2 = series.steps[i].beam_w / sine;
-  state.extraterrestrial_w_m2 = series.sun.normal_w_m2[i];
-  state.sun_zenith = Angle::radians(std::acos(std::clamp(middle.up, 0.0, 1.0)));
-  return state;
-}
-
-SkyDirection middle_of(const SkyDirection& a, const SkyDirection& b) {
-  SkyDirection d{a.east + b.east, a.north + b.north, a.up + b.up};
-  const double length = std::sqrt(d.east * d.east + d.north * d.north + d.up * d.up);
-  return {d.east / length, d.north / length, d.up / length};
-}
-
 // [sector][band][period] of sky light on the level, mol.
 class SkySums {
  public:
@@ -212,15 +195,7 @@ DomeLight make_dome_light(const LightSeries& series, const Dome& dome, SkyModel 
     if (step.beam_umol > 0.0F) add_beam(series, i, step.beam_umol * mol_per_umol_s, bins, in);
     if (step.sky_umol <= 0.0F) continue;
     const double mol = step.sky_umol * mol_per_umol_s;
-    if (sky == SkyModel::isotropic) {
-      sums.add(patches.isotropic(), mol, in);
-    } else if (sky == SkyModel::overcast) {
-      sums.add(patches.overcast(), mol, in);
-    } else {
-      const SkyDirection middle = middle_of(series.sun.edges[i], series.sun.edges[i + 1]);
-      const SkyState state = sky_state(series, i, middle);
-      sums.add(patches.perez(perez_shape(sky_indices(state), state.sun_zenith), middle), mol, in);
-    }
+    sums.add(sky_fractions(patches, sky, series, i), mol, in);
   }
   spread_sky(sums, light);
   scale_to_days(light.beam, days, dome.lines() * dome.steps());

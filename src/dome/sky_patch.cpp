@@ -25,6 +25,16 @@ Eigen::ArrayXf arc_cosine(const Eigen::ArrayXf& x) {
   return (x < 0.0F).select(3.14159265F - angle, angle);
 }
 
+SkyState sky_state(const LightSeries& series, std::size_t i, const SkyDirection& middle) {
+  SkyState state;
+  state.sky_w_m2 = series.steps[i].sky_w;
+  const double sine = std::max<double>(series.sun.mean_sine[i], 1e-3);
+  state.beam_normal_w_m2 = series.steps[i].beam_w / sine;
+  state.extraterrestrial_w_m2 = series.sun.normal_w_m2[i];
+  state.sun_zenith = Angle::radians(std::acos(std::clamp(middle.up, 0.0, 1.0)));
+  return state;
+}
+
 }  // namespace
 
 // The middle of a band is its middle in sine: bands are uniform in sine, and a band's share of the
@@ -94,6 +104,21 @@ void SkyPatches::normalise() {
     return;
   }
   for (float& value : fraction_) value = static_cast<float>(value / sum);
+}
+
+SkyDirection middle_direction(const SkyDirection& a, const SkyDirection& b) {
+  const SkyDirection d{a.east + b.east, a.north + b.north, a.up + b.up};
+  const double length = std::sqrt(d.east * d.east + d.north * d.north + d.up * d.up);
+  return {d.east / length, d.north / length, d.up / length};
+}
+
+const std::vector<float>& sky_fractions(SkyPatches& patches, SkyModel sky, const LightSeries& series,
+                                        std::size_t step) {
+  if (sky == SkyModel::isotropic) return patches.isotropic();
+  if (sky == SkyModel::overcast) return patches.overcast();
+  const SkyDirection middle = middle_direction(series.sun.edges[step], series.sun.edges[step + 1]);
+  const SkyState state = sky_state(series, step, middle);
+  return patches.perez(perez_shape(sky_indices(state), state.sun_zenith), middle);
 }
 
 }  // namespace sunfall

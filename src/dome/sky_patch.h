@@ -32,4 +32,11 @@ class SkyPatches {
   std::vector<float> fraction_;
 };
 
+// The direction halfway between two.
+SkyDirection middle_direction(const SkyDirection& a, const SkyDirection& b);
+
+// The sky of step i of a series, under the sky model of the plan.
+const std::vector<float>& sky_fractions(SkyPatches& patches, SkyModel sky, const LightSeries& series,
+                                        std::size_t step);
+
 }  // namespace sunfall

@@ -78,11 +78,4 @@ void add_photons(LightSeries& series) {
   }
 }
 
-const char* month_name(std::size_t month) {
-  static constexpr std::array<const char*, 12> names{"January",   "February", "March",    "April",
-                                                     "May",       "June",     "July",     "August",
-                                                     "September", "October",  "November", "December"};
-  return names.at(month);
-}
-
 }  // namespace sunfall

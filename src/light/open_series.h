@@ -5,6 +5,7 @@
 #include <string>
 #include <vector>
 
+#include "core/month_names.h"
 #include "sunfall/light.h"
 
 namespace sunfall {
@@ -46,8 +47,5 @@ std::array<double, 12> monthly_mean_mj_m2_d(const LightSeries& series, const Pow
 
 // Fills the photons of every step from its watts, and notes the year's factor.
 void add_photons(LightSeries& series);
-
-// "January" for 0.
-const char* month_name(std::size_t month);
 
 }  // namespace sunfall

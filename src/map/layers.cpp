@@ -6,12 +6,11 @@
 #include <array>
 #include <cmath>
 
+#include "core/month_names.h"
+
 namespace sunfall {
 namespace {
 
-constexpr std::array<const char*, 12> kMonthNames = {"January",   "February", "March",    "April",
-                                                     "May",       "June",     "July",     "August",
-                                                     "September", "October",  "November", "December"};
 constexpr double kDliQuantum = 1.0 / 128.0;
 constexpr double kShareQuantum = 1.0 / 4096.0;
 constexpr const char* kDliUnit = "mol m-2 d-1";
@@ -51,8 +50,6 @@ void share_values(const TileLight& light, std::size_t column, std::vector<float>
 }
 
 }  // namespace
-
-const char* month_name(std::size_t month) { return kMonthNames.at(month); }
 
 std::string period_title(const Period& period) {
   if (period.name.size() == 2 && period.name[0] <= '1' && period.name[0] >= '0') {

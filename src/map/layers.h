@@ -32,8 +32,6 @@ std::vector<LayerRecipe> layers_of(const Plan& plan, const std::vector<Period>& 
 
 OpenField open_field(const DomeLight& light, int year);
 
-// "January" … "December" for 0 … 11.
-const char* month_name(std::size_t month);
 // A period for people: "January", or "season (15 Apr to 30 Sep)".
 std::string period_title(const Period& period);
 

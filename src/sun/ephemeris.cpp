@@ -1,6 +1,7 @@
 #include "sun/ephemeris.h"
 
 #include <erfa.h>
+#include <erfaextra.h>
 #include <erfam.h>
 
 #include <algorithm>
@@ -51,6 +52,8 @@ double equinox_from_origin_rad(double unix_s) {
 }
 
 }  // namespace
+
+std::string ephemeris_version() { return std::string("ERFA ") + eraVersion(); }
 
 double earth_rotation_rad(double unix_s) { return eraEra00(kUnixEpoch_jd, unix_s / kSecondsPerDay); }
 

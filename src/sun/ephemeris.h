@@ -1,6 +1,7 @@
 #pragma once
 // The sun as seen from the Earth's centre, in the frame that turns with the Earth.
 
+#include <string>
 #include <vector>
 
 #include "sunfall/time.h"
@@ -20,6 +21,9 @@ struct SolarCoordinates {
 
 // Seconds of UTC since 1970, leap seconds not counted; whole seconds are UtcTime's.
 inline double unix_seconds(UtcTime time) { return static_cast<double>(time.time_since_epoch().count()); }
+
+// "ERFA 2.0.0", for provenance.
+std::string ephemeris_version();
 
 // The Earth's rotation angle, radians, with UT1 taken as UTC (they differ by less than 0.9 s).
 double earth_rotation_rad(double unix_s);

@@ -1,0 +1,32 @@
+#include "app/interrupt.h"
+
+#include <unistd.h>
+
+#include <csignal>
+
+namespace sunfall {
+namespace {
+
+volatile std::sig_atomic_t asked_to_stop = 0;
+
+extern "C" void on_signal(int) {
+  if (asked_to_stop != 0) _exit(5);
+  asked_to_stop = 1;
+}
+
+}  // namespace
+
+void watch_for_interrupts() {
+  struct sigaction action {};
+  action.sa_handler = on_signal;
+  sigemptyset(&action.sa_mask);
+  sigaction(SIGINT, &action, nullptr);
+  sigaction(SIGTERM, &action, nullptr);
+  // A file-size limit and a closed pipe must come back as errors of the write, not end the process.
+  std::signal(SIGXFSZ, SIG_IGN);
+  std::signal(SIGPIPE, SIG_IGN);
+}
+
+bool interrupted() { return asked_to_stop != 0; }
+
+}  // namespace sunfall

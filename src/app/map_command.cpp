@@ -1,0 +1,67 @@
+// sunfall map PLAN [-o DIR]
+
+#include <fmt/format.h>
+
+#include <cstdio>
+#include <memory>
+#include <nlohmann/json.hpp>
+
+#include "app/command_line.h"
+#include "app/run_folder.h"
+#include "app/terminal_progress.h"
+#include "map/site.h"
+#include "report/write_run.h"
+#include "sunfall/map.h"
+
+namespace sunfall {
+namespace {
+
+struct MapCommand {
+  CommonOptions common;
+  std::filesystem::path folder;
+};
+
+void print_months(const MapResult& maps) {
+  fmt::print("Open field, mol m-2 d-1:");
+  for (std::size_t m = 0; m < 12; ++m) fmt::print(" {:.1f}", maps.open.beam[m] + maps.open.sky[m]);
+  fmt::print("; year {:.1f}\n", maps.open.year);
+}
+
+void run_map(const MapCommand& command) {
+  const Plan plan = plan_of(command.common);
+  const Site site = open_site(plan);
+  const std::vector<Plot> plots = plots_of(plan, site.frame);
+  const std::filesystem::path out =
+      command.folder.empty() ? std::filesystem::path("outputs") / plan.file.stem() : command.folder;
+  TerminalProgress progress(command.common.quiet);
+  RunFolder folder(out);
+  const DomeLight light = dome_light_of(plan, site);
+  MapOptions options;
+  options.jobs = command.common.jobs;
+  const MapResult maps =
+      make_maps(plan, light, provenance_of(plan, site), folder.staging(), options, progress);
+  write_run(plan, site, maps, plots, folder.staging(), progress);
+  folder.publish("summary.json");
+  if (command.common.json) {
+    const nlohmann::ordered_json line{{"folder", out.string()},
+                                      {"summary", (out / "summary.json").string()},
+                                      {"layers", maps.layers.size()}};
+    fmt::print("{}\n", line.dump());
+  } else if (!command.common.quiet) {
+    print_months(maps);
+    fmt::print("{} layers, tables and pictures are in {}\n", maps.layers.size(), out.string());
+    if (site.series.is_ceiling) fmt::print("This is a cloudless ceiling, not a forecast.\n");
+  }
+}
+
+}  // namespace
+
+Action add_map(CLI::App& app, CLI::App*& command) {
+  auto options = std::make_shared<MapCommand>();
+  command = add_command(app, "map", "make light maps, tables and pictures", options->common);
+  command->add_option("-o,--output", options->folder,
+                      "the run's folder (default: outputs/NAME of the plan's file)");
+  return [options] { run_map(*options); };
+}
+
+}  // namespace sunfall

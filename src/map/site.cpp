@@ -1,0 +1,103 @@
+#include "map/site.h"
+
+#include <fmt/format.h>
+
+#include <cmath>
+
+#include "geo/layer_writer.h"
+#include "geo/raster_source.h"
+#include "sun/ephemeris.h"
+#include "sunfall/version.h"
+
+namespace sunfall {
+namespace {
+
+// The ground's height at the middle of the map, or at the nearest row that knows one.
+double height_at_middle(const RasterSource& ground) {
+  const GridFrame& frame = ground.frame();
+  for (int away = 0; away <= frame.rows / 2; ++away) {
+    for (const int row : {frame.rows / 2 - away, frame.rows / 2 + away}) {
+      if (row < 0 || row >= frame.rows) continue;
+      const Grid<float> line = ground.read({0, row, frame.columns, 1});
+      const float middle = line.at(frame.columns / 2, 0);
+      if (!std::isnan(middle)) return middle;
+      for (const float height : line.values()) {
+        if (!std::isnan(height)) return height;
+      }
+    }
+  }
+  return 0.0;
+}
+
+const char* sky_name(SkyModel sky) {
+  switch (sky) {
+    case SkyModel::clearness: return "all-weather sky (Perez, Seals and Michalsky 1993)";
+    case SkyModel::isotropic: return "isotropic sky";
+    case SkyModel::overcast: return "CIE overcast sky";
+  }
+  return "";
+}
+
+}  // namespace
+
+Site open_site(const Plan& plan) {
+  Site site;
+  const RasterSource ground = RasterSource::open(plan.site.ground, "ground");
+  site.frame = ground.frame();
+  site.middle = geo_place(site.frame, site.frame.middle());
+  site.middle.place.height_m = height_at_middle(ground);
+  site.series =
+      make_light(plan.light, site.middle.place, plan.site.clock, plan.light_options, plan.light_where);
+  site.notes = site.series.notes;
+  site.notes.push_back(
+      fmt::format("The sun and the sky are those of the middle of the map ({:.4f}° N, {:.4f}° E).",
+                  site.middle.place.latitude.degrees(), site.middle.place.longitude.degrees()));
+  if (!plan.site.far_ground) {
+    site.notes.push_back(
+        "No far_ground: hills and trees beyond the edge of the map are unknown; sight.tif tells where "
+        "that may matter.");
+  }
+  if (!plan.site.surface) {
+    site.notes.push_back(
+        "No surface: only the ground itself casts shade; buildings, walls and trees are left out.");
+  }
+  if (plan.site.receiver_plane == ReceiverPlane::ground) {
+    site.notes.push_back(
+        "Light is counted on the plane of the ground; light reflected from the ground around is left out.");
+  }
+  return site;
+}
+
+DomeLight dome_light_of(const Plan& plan, const Site& site) {
+  return make_dome_light(site.series, Dome::of(plan.dome.quality), plan.dome.sky, plan.periods);
+}
+
+double umol_per_joule(const LightSeries& series) {
+  double photons = 0.0, energy = 0.0;
+  for (const LightStep& step : series.steps) {
+    photons += double(step.beam_umol) + step.sky_umol;
+    energy += double(step.beam_w) + step.sky_w;
+  }
+  return energy > 0.0 ? photons / energy : 0.0;
+}
+
+std::map<std::string, std::string> provenance_of(const Plan& plan, const Site& site) {
+  const Dome dome = Dome::of(plan.dome.quality);
+  std::map<std::string, std::string> out;
+  out["SUNFALL_VERSION"] = kVersion;
+  out["SUNFALL_PLAN"] = plan.name;
+  out["SUNFALL_LIGHT"] =
+      site.series.description + (site.series.is_ceiling ? " (a cloudless ceiling, not a forecast)" : "");
+  out["SUNFALL_PHOTONS"] =
+      fmt::format("{:.3f} umol per J of global radiation over the year", umol_per_joule(site.series));
+  out["SUNFALL_SKY"] = sky_name(plan.dome.sky);
+  out["SUNFALL_DOME"] =
+      fmt::format("{} sectors, {} bands, {} lines a sector", dome.sectors, dome.bands, dome.lines_per_sector);
+  out["SUNFALL_RECEIVER"] =
+      fmt::format("{} m above the ground, {}", plan.site.receiver_height_m,
+                  plan.site.receiver_plane == ReceiverPlane::level ? "level" : "in the plane of the ground");
+  out["SUNFALL_LIBRARIES"] = fmt::format("{}, {}", geo_versions(), ephemeris_version());
+  return out;
+}
+
+}  // namespace sunfall

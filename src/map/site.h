@@ -1,0 +1,32 @@
+#pragma once
+// What every command needs to know of a plan before it works: where it lies, and the light there.
+
+#include <map>
+#include <string>
+#include <vector>
+
+#include "geo/geodesy.h"
+#include "sunfall/dome.h"
+#include "sunfall/light.h"
+#include "sunfall/plan.h"
+
+namespace sunfall {
+
+struct Site {
+  GridFrame frame;
+  GeoPlace middle;  // height: the ground's at the middle of the map
+  LightSeries series;
+  std::vector<std::string> notes;  // assumptions that were made for the user
+};
+// Opens the ground and makes the light series. Throws Error.
+Site open_site(const Plan& plan);
+
+DomeLight dome_light_of(const Plan& plan, const Site& site);
+
+// Where a run came from, for every layer's metadata.
+std::map<std::string, std::string> provenance_of(const Plan& plan, const Site& site);
+
+// Photons 400-700 nm per joule of global radiation over the whole series, µmol J-1.
+double umol_per_joule(const LightSeries& series);
+
+}  // namespace sunfall
