@@ -34,7 +34,7 @@ std::optional<std::string> owner_of(const std::string& target) {
 
 const std::vector<FolderRule>& folder_rules() {
   // sun's Place stands in geo's contract; the plan is written in the terms of light and dome; the map
-  // is the main job, which starts from a plan and brings its light.
+  // is the main job, which starts from a plan and brings its light; a report names what the plan chose.
   static const std::vector<FolderRule> rules = {
       {"core", {}},
       {"sun", {}},
@@ -45,7 +45,7 @@ const std::vector<FolderRule>& folder_rules() {
       {"shade", {"geo", "dome"}},
       {"map", {"sun", "geo", "light", "dome", "plan", "shade"}},
       {"advise", {"light", "plan", "map"}},
-      {"report", {"geo", "map", "advise"}},
+      {"report", {"sun", "geo", "light", "dome", "plan", "map", "advise"}},
       {"app", {"sun", "geo", "light", "dome", "plan", "shade", "map", "advise", "report"}},
   };
   return rules;
