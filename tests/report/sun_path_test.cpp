@@ -109,6 +109,8 @@ TEST_F(SunPathTest, TheChartTurnsToTheEquator) {
   EXPECT_DOUBLE_EQ(northern.at(90.0, 0.0).x, 280.0);
   EXPECT_DOUBLE_EQ(northern.top_elevation_deg(), 70.0);
   EXPECT_DOUBLE_EQ(northern.at(180.0, 35.0).y, 250.0);
+  EXPECT_DOUBLE_EQ(northern.on_chart(-10.0), 350.0);
+  EXPECT_DOUBLE_EQ(northern.on_chart(730.0), 10.0);
   const SunChart southern(kChartBox, picture_of(-33.9, 0.0));
   EXPECT_DOUBLE_EQ(southern.at(southern.on_chart(0.0), 0.0).x, 460.0);
   EXPECT_DOUBLE_EQ(southern.at(southern.on_chart(90.0), 0.0).x, 640.0);   // east to the right of north
