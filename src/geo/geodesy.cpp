@@ -9,6 +9,7 @@
 #include <fmt/format.h>
 
 #include "geo/crs.h"
+#include "geo/gdal_guard.h"
 #include "sunfall/error.h"
 
 namespace sunfall {
@@ -130,6 +131,15 @@ MapPoint map_point(const GridFrame& frame, Angle longitude, Angle latitude) {
                                                       latitude.degrees(), crs_name(frame)));
   }
   return {map.xy.x, map.xy.y};
+}
+
+std::string crs_wkt_of_epsg(int code) {
+  GdalGuard guard;
+  OGRSpatialReference crs;
+  if (crs.importFromEPSG(code) != OGRERR_NONE) {
+    guard.fail(ErrorKind::data, "there is no such coordinate reference system", "EPSG:" + std::to_string(code), "");
+  }
+  return wkt_of(crs);
 }
 
 std::string crs_name(const GridFrame& frame) {

@@ -19,6 +19,9 @@ GeoPlace geo_place(const GridFrame& frame, MapPoint point);
 // The other way, from longitude and latitude to the map.
 MapPoint map_point(const GridFrame& frame, Angle longitude, Angle latitude);
 
+// The CRS of an EPSG code, for frames that are made and not read. Throws Error(data).
+std::string crs_wkt_of_epsg(int code);
+
 // "EPSG:25831" or the CRS's name, for people.
 std::string crs_name(const GridFrame& frame);
 

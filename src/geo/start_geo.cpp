@@ -39,6 +39,8 @@ void close_side_doors() {
   CPLSetConfigOption("GDAL_CACHEMAX", kBlockCacheMegabytes);
   // Worker threads would report errors past the guard of the thread that asked.
   CPLSetConfigOption("GDAL_NUM_THREADS", "1");
+  // Overviews wait in a temporary file while a COG is made; compressing that is time lost.
+  CPLSetConfigOption("COG_TMP_COMPRESSION", "NONE");
   CPLHTTPSetFetchCallback(refuse_request, nullptr);
   OSRSetPROJEnableNetwork(0);
 }
