@@ -1,5 +1,7 @@
 #include "plan/plan_file.h"
 
+#include <fmt/format.h>
+
 #include <algorithm>
 
 #include "plan/words.h"
@@ -15,10 +17,8 @@ bool is_bare(char letter) {
 }  // namespace
 
 std::string PlanFile::where(long line, const std::string& key) const {
-  std::string text = path.string();
-  if (line > 0) text += ":" + std::to_string(line);
-  if (!key.empty()) text += " " + key;
-  return text;
+  const std::string place = line > 0 ? fmt::format("{}:{}", path.string(), line) : path.string();
+  return key.empty() ? place : fmt::format("{} {}", place, key);
 }
 
 std::string joined_key(const std::string& table, const std::string& key) {

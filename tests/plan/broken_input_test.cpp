@@ -90,7 +90,7 @@ TEST(BrokenPlans, NestedBeyondReason) {
                                   "a = " + repeated("[\n{" + repeated("a.", 150) + "a=", 200),
                                   "s = 'x' #'''\n" + repeated("'a' . ", 100000) + "a = 1\n",
                                   "s = \"\\\"\" # \"\n" + repeated("a.", 400000) + "a = 1\n",
-                                  "s = '''a''''' # '''\n" + repeated("a.", 400000) + "a = 1\n"}) {
+                                  "s = { b = '''a'''', " + repeated("a.", 400000) + "a = 1 }\n"}) {
     const PlanFolder::Fault fault = folder.fault(plan);
     EXPECT_EQ(fault.what, what) << plan.substr(0, 60);
     EXPECT_EQ(fault.kind, ErrorKind::plan);

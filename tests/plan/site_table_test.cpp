@@ -46,7 +46,8 @@ TEST(SiteTable, TakesZonesAndOffsets) {
 
 TEST(SiteTable, RefusesAbbreviatedClocks) {
   const PlanFolder folder;
-  for (const char* clock : {"CET", "CEST", "EST", "EDT", "BST", "IST", "AEST", "EST5EDT", "UTC1", "CST6"}) {
+  for (const char* clock :
+       {"CET", "CEST", "EST", "EDT", "BST", "IST", "AEST", "ACWST", "EST5EDT", "UTC1", "CST6"}) {
     folder.expect_fault(
         with_clock(clock), "farm.toml:3 site.clock", "the clock is an abbreviation, which is ambiguous",
         in_quotes(clock),

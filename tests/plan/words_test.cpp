@@ -42,9 +42,10 @@ TEST(Words, AreHarmlessToATerminal) {
 }
 
 TEST(Words, AreCutBetweenCharacters) {
-  std::string long_text;
-  for (int i = 0; i < 100; ++i) long_text += "水";  // 3 bytes each: 20 fill 60 bytes
-  EXPECT_EQ(in_quotes(long_text), "\"" + long_text.substr(0, 60) + "…\"");
+  std::string text;
+  for (int i = 0; i < 100; ++i) text += "水";  // 3 bytes each: 20 fill the 60 bytes exactly
+  EXPECT_EQ(harmless(text, 60), text.substr(0, 60) + "…");
+  EXPECT_EQ(harmless(text, 61), text.substr(0, 63) + "…");  // the character begun is finished
 }
 
 TEST(Words, ListNames) {
