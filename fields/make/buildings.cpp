@@ -46,7 +46,7 @@ Solid drum(std::string name, Point middle, double radius_m, double wall_m, doubl
 
 // A wall or hedge along a path. It is drawn at least 1.5 m thick: on 1 m cells that is the least
 // that leaves no holes whichever way it runs.
-Solid strip(std::string name, Path path, double thickness_m, double height_m) {
+Solid strip(std::string name, const Path& path, double thickness_m, double height_m) {
   return {std::move(name),
           [=](Point point) -> std::optional<double> {
             if (distance_to_path(point, path) > 0.5 * std::max(thickness_m, 1.5)) return std::nullopt;

@@ -47,11 +47,12 @@ void write_heights(const std::filesystem::path& folder, const sunfall::LayerSpec
     for (int column = 0; column < frame.columns; ++column) {
       const sunfall::MapPoint centre = frame.centre({column, row});
       double sum = 0.0;
-      for (int sample = 0; sample < samples * samples; ++sample) {
-        const double right = ((sample % samples) + 0.5) / samples - 0.5;
-        const double up = ((sample / samples) + 0.5) / samples - 0.5;
-        sum += height(
-            {centre.east + right * frame.cell_m - kWest_m, centre.north + up * frame.cell_m - kSouth_m});
+      for (int i = 0; i < samples; ++i) {
+        for (int j = 0; j < samples; ++j) {
+          const double right = ((i + 0.5) / samples - 0.5) * frame.cell_m;
+          const double up = ((j + 0.5) / samples - 0.5) * frame.cell_m;
+          sum += height({centre.east + right - kWest_m, centre.north + up - kSouth_m});
+        }
       }
       grid.at(column, row) = static_cast<float>(sum / (samples * samples));
     }

@@ -11,7 +11,13 @@ namespace {
 
 constexpr double kTurn = 2.0 * std::numbers::pi;
 
-enum Seed : unsigned { kHillCrest = 11, kHillFoot = 23, kCounty = 37, kTerrace = 41, kSoil = 53, kWest = 67 };
+// Seeds of the noises.
+constexpr unsigned kHillCrest = 11;
+constexpr unsigned kHillFoot = 23;
+constexpr unsigned kCounty = 37;
+constexpr unsigned kTerrace = 41;
+constexpr unsigned kSoil = 53;
+constexpr unsigned kWest = 67;
 
 // The river runs northward along the farm's west side: its middle line.
 double river_x(double y) {
