@@ -20,35 +20,47 @@ struct DestroyPj {
 };
 using Pj = std::unique_ptr<PJ, DestroyPj>;
 
-// PROJ's contexts must not be shared by threads.
-PJ_CONTEXT* context() {
-  struct Owner {
-    PJ_CONTEXT* context = proj_context_create();
-    Owner() {
-      proj_context_set_enable_network(context, 0);
-      proj_log_level(context, PJ_LOG_NONE);
-    }
-    ~Owner() { proj_context_destroy(context); }
-  };
-  thread_local const Owner owner;
-  return owner.context;
-}
-
 [[noreturn]] void refuse(const std::string& what, const std::string& found) {
   throw Error(ErrorKind::data,
               {what, "CRS", found, "Use a projected CRS made for this region, such as its UTM zone"});
 }
 
-// From longitude and latitude on WGS84, in degrees, to the map.
-Pj globe_to_map(const GridFrame& frame) {
-  const Pj map(proj_create(context(), frame.crs_wkt.c_str()));
-  const Pj globe(proj_create(context(), "EPSG:4326"));
+struct DestroyContext {
+  void operator()(PJ_CONTEXT* context) const { proj_context_destroy(context); }
+};
+
+// PROJ's contexts must not be shared by threads, so each has one, with the transformation that it
+// used last: finding one takes some ten milliseconds.
+struct ThreadProj {
+  std::unique_ptr<PJ_CONTEXT, DestroyContext> context{proj_context_create()};
+  std::string map_wkt;
+  Pj globe_to_map;
+
+  ThreadProj() {
+    proj_context_set_enable_network(context.get(), 0);
+    proj_log_level(context.get(), PJ_LOG_NONE);
+  }
+};
+
+Pj make_globe_to_map(PJ_CONTEXT* context, const GridFrame& frame) {
+  const Pj map(proj_create(context, frame.crs_wkt.c_str()));
+  const Pj globe(proj_create(context, "EPSG:4326"));
   if (!map || !globe)
     refuse("the coordinate reference system cannot be understood", frame.crs_wkt.substr(0, 80));
-  const Pj raw(proj_create_crs_to_crs_from_pj(context(), globe.get(), map.get(), nullptr, nullptr));
-  Pj ordered(raw ? proj_normalize_for_visualization(context(), raw.get()) : nullptr);
+  const Pj raw(proj_create_crs_to_crs_from_pj(context, globe.get(), map.get(), nullptr, nullptr));
+  Pj ordered(raw ? proj_normalize_for_visualization(context, raw.get()) : nullptr);
   if (!ordered) refuse("no way is known between the map and the globe", crs_name(frame));
   return ordered;
+}
+
+// From longitude and latitude on WGS84, in degrees, to the map. Owned by this thread.
+PJ* globe_to_map(const GridFrame& frame) {
+  thread_local ThreadProj own;
+  if (!own.globe_to_map || own.map_wkt != frame.crs_wkt) {
+    own.globe_to_map = make_globe_to_map(own.context.get(), frame);
+    own.map_wkt = frame.crs_wkt;
+  }
+  return own.globe_to_map;
 }
 
 bool is_finite(const PJ_COORD& point) { return std::isfinite(point.xy.x) && std::isfinite(point.xy.y); }
@@ -94,19 +106,19 @@ LocalMap local_map(PJ* to_map, double longitude_deg, double latitude_deg) {
 }  // namespace
 
 GeoPlace geo_place(const GridFrame& frame, MapPoint point) {
-  const Pj to_map = globe_to_map(frame);
-  const PJ_COORD globe = proj_trans(to_map.get(), PJ_INV, proj_coord(point.east, point.north, 0.0, 0.0));
+  PJ* to_map = globe_to_map(frame);
+  const PJ_COORD globe = proj_trans(to_map, PJ_INV, proj_coord(point.east, point.north, 0.0, 0.0));
   if (!is_finite(globe) || std::abs(globe.xy.y) > 90.0) {
     refuse("the point has no longitude and latitude", point_text(point) + " in " + crs_name(frame));
   }
   const double longitude_deg = globe.xy.x;
   const double latitude_deg = globe.xy.y;
   // Far outside its region a projection may answer with a place that does not lead back.
-  const PJ_COORD back = proj_trans(to_map.get(), PJ_FWD, globe);
+  const PJ_COORD back = proj_trans(to_map, PJ_FWD, globe);
   if (!is_finite(back) || std::hypot(back.xy.x - point.east, back.xy.y - point.north) > 1.0) {
     refuse("the point lies outside the region of its CRS", point_text(point) + " in " + crs_name(frame));
   }
-  const LocalMap local = local_map(to_map.get(), longitude_deg, latitude_deg);
+  const LocalMap local = local_map(to_map, longitude_deg, latitude_deg);
   const double area = std::abs(local.eastward.east_m_per_m * local.northward.north_m_per_m -
                                local.eastward.north_m_per_m * local.northward.east_m_per_m);
   GeoPlace place;
@@ -123,9 +135,9 @@ GeoPlace geo_place(const GridFrame& frame, MapPoint point) {
 }
 
 MapPoint map_point(const GridFrame& frame, Angle longitude, Angle latitude) {
-  const Pj to_map = globe_to_map(frame);
+  PJ* to_map = globe_to_map(frame);
   const PJ_COORD map =
-      proj_trans(to_map.get(), PJ_FWD, proj_coord(longitude.degrees(), latitude.degrees(), 0.0, 0.0));
+      proj_trans(to_map, PJ_FWD, proj_coord(longitude.degrees(), latitude.degrees(), 0.0, 0.0));
   if (!is_finite(map)) {
     refuse("the place is not on the map", fmt::format("longitude {}, latitude {} in {}", longitude.degrees(),
                                                       latitude.degrees(), crs_name(frame)));
@@ -137,7 +149,8 @@ std::string crs_wkt_of_epsg(int code) {
   GdalGuard guard;
   OGRSpatialReference crs;
   if (crs.importFromEPSG(code) != OGRERR_NONE) {
-    guard.fail(ErrorKind::data, "there is no such coordinate reference system", "EPSG:" + std::to_string(code), "");
+    guard.fail(ErrorKind::data, "there is no such coordinate reference system",
+               "EPSG:" + std::to_string(code), "");
   }
   return wkt_of(crs);
 }
