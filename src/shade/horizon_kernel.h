@@ -6,7 +6,8 @@
 // Each line keeps the upper hull of the ground it has passed as a chain of parent links: the parent
 // of a point is the point that makes its horizon. From a receiver the horizon is found by walking
 // the chain while the slope still rises (Dozier and Frew 1990; Timonen and Westerholm 2010, O(1)
-// amortised). Rows are taken in pairs, of which the higher counts, at its own distance.
+// amortised). Rows are taken in pairs, of which one counts, at its own distance: the farther where it is
+// higher by more than a line of sight of middling slope rises between the two, else the nearer.
 
 #include <cstdint>
 
@@ -20,6 +21,7 @@ inline constexpr int kLinesPerBlock = 32;
 // least kFarDelay rows before it. Rows nearer than kNearRows are looked at one by one elsewhere.
 inline constexpr int kNodeStride = 4;
 inline constexpr int kFarDelay = 15;
+inline constexpr float kPairTangent = 0.25F;  // that middling slope
 inline constexpr int kNearRows = kFarDelay - 1 + kNodeStride - 1;
 
 // One row of heights across the march. values[i] lies at v = first_v + i·cell.

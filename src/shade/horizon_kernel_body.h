@@ -144,10 +144,11 @@ class BlockSweep {
     Float z0[kParts], z1[kParts];
     sample(first, z0);
     sample(second, z1);
+    const Float advantage = Lanes::set(kPairTangent * (second.u - first.u) / job_.tangent_per_slope);
     Walk walks[kParts];
     Int codes[kParts];
     for (int part = 0; part < kParts; ++part) {
-      const Mask use_first = Lanes::greater(z0[part], z1[part]);
+      const Mask use_first = Lanes::greater(Lanes::sub(z0[part], z1[part]), advantage);
       Walk& walk = walks[part];
       walk.eye_height = Lanes::choose(use_first, z0[part], z1[part]);
       walk.eye_u = Lanes::choose(use_first, Lanes::set(first.u), Lanes::set(second.u));

@@ -122,7 +122,8 @@ void HorizonSweep::align_rows(March& m) {
 void HorizonSweep::turn_receivers(March& m) {
   const int margin = kReceiverMargin;
   m.receiver_stride = m.width + 2 * margin;
-  m.receivers.resize(static_cast<std::size_t>(m.rows + 2 * margin) * m.receiver_stride);
+  // Room for a whole group of cells behind the last row.
+  m.receivers.resize(static_cast<std::size_t>(m.rows + 2 * margin) * m.receiver_stride + kRowGroup);
   for (int u = -margin; u < m.rows + margin; ++u) {
     const int place = (m.reversed ? m.rows - 1 - u : u) + margin;
     for (int v = -margin; v < m.width + margin; ++v) {
@@ -136,18 +137,22 @@ void HorizonSweep::turn_receivers(March& m) {
 void HorizonSweep::look_near(GridAzimuth azimuth) {
   const Direction direction = direction_of(azimuth);
   const March& m = march(direction.heading);
-  near_heading_ = direction.heading;
-  near_.resize(static_cast<std::size_t>(m.rows) * m.width);
-  const float scale = static_cast<float>(1.0 / (options_.cell_m * direction.row_length));
+  near_stride_ = (m.width + kRowGroup - 1) / kRowGroup * kRowGroup;
+  near_.resize(static_cast<std::size_t>(m.rows) * near_stride_);
   for (int u = 0; u < m.rows; ++u) {
+    NearRow rows[kNearRows];
+    for (int n = 1; n <= kNearRows; ++n) {
+      const float shift = -direction.lean * static_cast<float>(n);
+      const float whole = std::floor(shift);
+      rows[n - 1] = {m.near[static_cast<std::size_t>(u + kNearRows - n)] + static_cast<int>(whole), shift - whole,
+                     1.0F / static_cast<float>(n)};
+    }
     NearLook look;
-    look.eyes = m.receivers.data() + static_cast<std::size_t>(u + kReceiverMargin) * m.receiver_stride +
-                kReceiverMargin;
-    look.rows = m.near.data() + u;  // rows[kNearRows - n] lies n rows before
-    look.lean = direction.lean;
-    look.tangent_per_slope = scale;
+    look.eyes = m.receivers.data() + static_cast<std::size_t>(u + kReceiverMargin) * m.receiver_stride + kReceiverMargin;
+    look.rows = rows;
+    look.tangent_per_slope = static_cast<float>(1.0 / (options_.cell_m * direction.row_length));
     look.width = m.width;
-    look.out = near_.data() + static_cast<std::size_t>(u) * m.width;
+    look.out = near_.data() + static_cast<std::size_t>(u) * near_stride_;
     look_along_near_rows(look);
   }
 }
@@ -207,7 +212,7 @@ void HorizonSweep::look_far(GridAzimuth azimuth, std::uint16_t* steps) {
     read.second =
         far_.data() + static_cast<std::size_t>(next) * far_stride_ + static_cast<int>(std::floor(shift1));
     read.second_fraction = shift1 - std::floor(shift1);
-    read.near = near_.data() + static_cast<std::size_t>(u) * m.width;
+    read.near = near_.data() + static_cast<std::size_t>(u) * near_stride_;
     read.width = m.width;
     const int row = m.reversed ? m.rows - 1 - u : u;
     read.steps = steps + static_cast<std::size_t>(row) * m.width;

@@ -73,8 +73,8 @@ class HorizonSweep {
   SweepOptions options_;
   std::array<March, 4> marches_;
   std::vector<LevelGrid> turned_;  // levels stored column by column
+  int near_stride_ = 0;
   std::vector<float> near_;        // tangents, u by v
-  Heading near_heading_ = Heading::north;
   std::vector<float> far_;
   int far_stride_ = 0;
   std::vector<float> parent_height_;

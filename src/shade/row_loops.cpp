@@ -9,26 +9,40 @@
 
 namespace sunfall {
 
-// In chunks that stay in registers or the first cache while the rows pass.
+namespace {
+
+// Sixteen cells at a time; the compiler splits them where registers are shorter.
+using Cells = float __attribute__((vector_size(64)));
+constexpr int kCells = 16;
+
+inline Cells load(const float* p) {
+  Cells cells;
+  __builtin_memcpy(&cells, p, sizeof cells);
+  return cells;
+}
+
+}  // namespace
+
+// Two groups of cells stay in registers while the rows pass. The last groups of a row reach beyond
+// the tile into its margin; `out` has room for them.
 SUNFALL_CLONES void look_along_near_rows(const NearLook& look) {
-  constexpr int kChunk = 64;
-  for (int begin = 0; begin < look.width; begin += kChunk) {
-    const int count = std::min(kChunk, look.width - begin);
-    float best[kChunk] = {};
-    const float* eyes = look.eyes + begin;
+  for (int begin = 0; begin < look.width; begin += 2 * kCells) {
+    const Cells eyes0 = load(look.eyes + begin), eyes1 = load(look.eyes + begin + kCells);
+    Cells best0 = {}, best1 = {};
     for (int n = 1; n <= kNearRows; ++n) {
-      const float shift = -look.lean * static_cast<float>(n);
-      const float whole = std::floor(shift);
-      const float fraction = shift - whole;
-      const float* row = look.rows[kNearRows - n] + begin + static_cast<int>(whole);
-      const float per_row = 1.0F / static_cast<float>(n);
-      for (int i = 0; i < count; ++i) {
-        const float height = row[i] + fraction * (row[i + 1] - row[i]);
-        const float slope = (height - eyes[i]) * per_row;
-        best[i] = slope > best[i] ? slope : best[i];
-      }
+      const NearRow& near = look.rows[n - 1];
+      const float* row = near.values + begin;
+      const Cells left0 = load(row), left1 = load(row + kCells);
+      const Cells height0 = left0 + near.fraction * (load(row + 1) - left0);
+      const Cells height1 = left1 + near.fraction * (load(row + kCells + 1) - left1);
+      const Cells slope0 = (height0 - eyes0) * near.per_row, slope1 = (height1 - eyes1) * near.per_row;
+      best0 = slope0 > best0 ? slope0 : best0;
+      best1 = slope1 > best1 ? slope1 : best1;
     }
-    for (int i = 0; i < count; ++i) look.out[begin + i] = best[i] * look.tangent_per_slope;
+    best0 *= look.tangent_per_slope;
+    best1 *= look.tangent_per_slope;
+    __builtin_memcpy(look.out + begin, &best0, sizeof best0);
+    __builtin_memcpy(look.out + begin + kCells, &best1, sizeof best1);
   }
 }
 

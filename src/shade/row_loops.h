@@ -6,13 +6,21 @@
 
 namespace sunfall {
 
+inline constexpr int kRowGroup = 32;  // rows are worked on in whole groups of cells
+
+// A row some rows before the receivers', seen along the ray: at v the height lies `fraction` of the
+// way from values[v] to values[v + 1].
+struct NearRow {
+  const float* values = nullptr;
+  float fraction = 0.0F;
+  float per_row = 1.0F;  // one over the rows between
+};
 struct NearLook {
-  const float* eyes = nullptr;         // receiver heights, v = 0 …
-  const float* const* rows = nullptr;  // rows[kNearRows - n] points at v = 0 of the row n before
-  float lean = 0.0F;
+  const float* eyes = nullptr;  // receiver heights, v = 0 …, readable to the end of the last group
+  const NearRow* rows = nullptr;  // kNearRows of them, nearest first; readable as far and one more
   float tangent_per_slope = 1.0F;
   int width = 0;
-  float* out = nullptr;  // tangents ≥ 0
+  float* out = nullptr;  // tangents ≥ 0, with room for whole groups
 };
 void look_along_near_rows(const NearLook& look);
 
