@@ -60,7 +60,7 @@ PJ* globe_to_map(const GridFrame& frame) {
     own.globe_to_map = make_globe_to_map(own.context.get(), frame);
     own.map_wkt = frame.crs_wkt;
   }
-  return own.globe_to_map;
+  return own.globe_to_map.get();
 }
 
 bool is_finite(const PJ_COORD& point) { return std::isfinite(point.xy.x) && std::isfinite(point.xy.y); }
