@@ -1,5 +1,7 @@
 #include "app/command_line.h"
 
+#include "app/memory.h"
+
 namespace sunfall {
 
 CLI::App* add_command(CLI::App& app, const std::string& name, const std::string& purpose,
@@ -21,6 +23,11 @@ Plan plan_of(const CommonOptions& options) {
   if (options.dome == "standard") plan.dome.quality = DomeQuality::standard;
   if (options.dome == "fine") plan.dome.quality = DomeQuality::fine;
   return plan;
+}
+
+Site site_of(const Plan& plan) {
+  require_memory_for(plan);
+  return open_site(plan);
 }
 
 }  // namespace sunfall

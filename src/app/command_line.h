@@ -6,6 +6,7 @@
 #include <optional>
 #include <string>
 
+#include "map/site.h"
 #include "sunfall/plan.h"
 
 namespace sunfall {
@@ -24,6 +25,9 @@ CLI::App* add_command(CLI::App& app, const std::string& name, const std::string&
 
 // Reads the plan and applies what the command line says instead.
 Plan plan_of(const CommonOptions& options);
+
+// Checks that memory can hold the plan's map, and opens its inputs.
+Site site_of(const Plan& plan);
 
 // Each command registers itself and returns what to run when it was asked for. Another command is
 // one file and one line in main.cpp.

@@ -3,6 +3,7 @@
 #include <unistd.h>
 
 #include <csignal>
+#include <initializer_list>
 
 namespace sunfall {
 namespace {
@@ -20,8 +21,12 @@ void watch_for_interrupts() {
   struct sigaction action {};
   action.sa_handler = on_signal;
   sigemptyset(&action.sa_mask);
-  sigaction(SIGINT, &action, nullptr);
-  sigaction(SIGTERM, &action, nullptr);
+  for (const int number : {SIGINT, SIGTERM, SIGHUP}) {
+    struct sigaction former {};
+    sigaction(number, nullptr, &former);
+    // Under nohup, or in the background of a script, the signal is not for us.
+    if (former.sa_handler != SIG_IGN) sigaction(number, &action, nullptr);
+  }
   // A file-size limit and a closed pipe must come back as errors of the write, not end the process.
   std::signal(SIGXFSZ, SIG_IGN);
   std::signal(SIGPIPE, SIG_IGN);

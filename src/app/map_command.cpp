@@ -7,6 +7,7 @@
 #include <nlohmann/json.hpp>
 
 #include "app/command_line.h"
+#include "app/former_run.h"
 #include "app/run_folder.h"
 #include "app/terminal_progress.h"
 #include "map/site.h"
@@ -29,10 +30,11 @@ void print_months(const MapResult& maps) {
 
 void run_map(const MapCommand& command) {
   const Plan plan = plan_of(command.common);
-  const Site site = open_site(plan);
-  const std::vector<Plot> plots = plots_of(plan, site.frame);
   const std::filesystem::path out =
       command.folder.empty() ? std::filesystem::path("outputs") / plan.file.stem() : command.folder;
+  require_apart_from_inputs(plan, out);
+  const Site site = site_of(plan);
+  const std::vector<Plot> plots = plots_of(plan, site.frame);
   TerminalProgress progress(command.common.quiet);
   RunFolder folder(out);
   const DomeLight light = dome_light_of(plan, site);
@@ -41,7 +43,7 @@ void run_map(const MapCommand& command) {
   const MapResult maps =
       make_maps(plan, light, provenance_of(plan, site), folder.staging(), options, progress);
   write_run(plan, site, maps, plots, folder.staging(), progress);
-  folder.publish("summary.json");
+  folder.publish("summary.json", files_of_former_run(out));
   if (command.common.json) {
     const nlohmann::ordered_json line{{"folder", out.string()},
                                       {"summary", (out / "summary.json").string()},

@@ -4,6 +4,7 @@
 
 #include <filesystem>
 #include <string>
+#include <vector>
 
 namespace sunfall {
 
@@ -14,21 +15,26 @@ class RunFolder {
   explicit RunFolder(std::filesystem::path folder);
   RunFolder(const RunFolder&) = delete;
   RunFolder& operator=(const RunFolder&) = delete;
-  // Lets go; what was not published is removed.
+  // Lets go; what was not published is removed, with the folders made for it.
   ~RunFolder();
 
   // Where to write.
   const std::filesystem::path& staging() const { return staging_; }
   const std::filesystem::path& folder() const { return folder_; }
   // Moves everything to its final name, `last` at the end. An earlier run's file of that name goes
-  // first. Throws Error(io).
-  void publish(const std::string& last);
+  // first, and then those of `outdated` that this run does not make. Throws Error(io).
+  void publish(const std::string& last, const std::vector<std::string>& outdated = {});
 
  private:
+  RunFolder() = default;
+  void make_folder();
+  void take_hold();
+  bool holds_what_stands_there() const;
+
   std::filesystem::path folder_;
   std::filesystem::path staging_;
+  std::filesystem::path topmost_made_;  // empty where every folder stood before
   int lock_ = -1;
-  bool made_folder_ = false;
 };
 
 }  // namespace sunfall

@@ -66,6 +66,12 @@ std::chrono::month_day day_of(const std::string& text) {
   return out;
 }
 
+void require_day_of_year(const std::string& text, std::chrono::month_day day, int year) {
+  if ((std::chrono::year{year} / day).ok()) return;
+  throw Error(ErrorKind::plan, {fmt::format("there is no such day in {}, the plan's light.year", year),
+                                "--day", text, "Give another day, or a leap year"});
+}
+
 void print_spot(const Spot& spot, const std::filesystem::path& out) {
   fmt::print("{:.1f} E, {:.1f} N, ground {:.1f} m (cell centre)\n\n", spot.centre.east, spot.centre.north,
              spot.ground_m);
@@ -102,7 +108,8 @@ void run_spot(const SpotCommand& command) {
   const MapPoint point = point_of(command.at);
   const std::chrono::month_day day = day_of(command.day);
   const Plan plan = plan_of(command.common);
-  const Site site = open_site(plan);
+  require_day_of_year(command.day, day, plan.light_options.year);
+  const Site site = site_of(plan);
   TerminalProgress progress(command.common.quiet || command.common.json);
   const Terrain terrain(open_terrain(plan.site), progress);
   const DomeLight light = dome_light_of(plan, site);

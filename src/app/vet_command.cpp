@@ -115,7 +115,7 @@ void print_text(const Plan& plan, const Site& site, const Terrain& terrain, cons
 
 void run_vet(const CommonOptions& options) {
   const Plan plan = plan_of(options);
-  const Site site = open_site(plan);
+  const Site site = site_of(plan);
   const std::size_t plots = plots_of(plan, site.frame).size();
   TerminalProgress progress(options.quiet || options.json);
   const Terrain terrain(open_terrain(plan.site), progress);
