@@ -53,7 +53,8 @@ RaySurface::RaySurface(const Terrain& terrain, Diagonal diagonal)
   add(terrain, terrain.level_grid(0, grown(map, kMargin)), nullptr, diagonal);
   const CellWindow known = terrain.known_box();
   if (!(known == map)) {
-    const CellWindow hole = map;
+    // Coarse cells that touch the map keep its highest corner: the full resolution stands for them.
+    const CellWindow hole = grown(map, kMargin - (2 << kFarLevel));
     add(terrain, terrain.level_grid(kFarLevel, at_level(known, kFarLevel)), &hole, diagonal);
   }
   rtcCommitScene(scene_);
