@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <cmath>
 
+#include "core/clones.h"
 #include "dome/sky_patch.h"
 #include "sunfall/dome.h"
 
@@ -110,22 +111,38 @@ void add_beam(const LightSeries& series, std::size_t i, double mol, BeamBins& bi
   }
 }
 
-// [sector][band][period] of sky light on the level, mol.
+SUNFALL_CLONES void add_scaled(const float* __restrict values, double scale, std::size_t count,
+                               double* __restrict sums) {
+  for (std::size_t k = 0; k < count; ++k) sums[k] += scale * values[k];
+}
+
+// [sector][band] of sky light on the level per period, mol. Days that follow each other mostly lie in
+// the same periods: their light is added up once and given to the periods when these change.
 class SkySums {
  public:
   SkySums(const Dome& dome, std::size_t periods)
       : size_(static_cast<std::size_t>(dome.sectors) * dome.bands),
+        lately_(size_, 0.0),
         sums_(periods, std::vector<double>(size_, 0.0)) {}
+
   void add(const std::vector<float>& fraction, double mol, const std::vector<std::size_t>& periods) {
-    for (const std::size_t p : periods) {
-      double* sum = sums_[p].data();
-      for (std::size_t k = 0; k < size_; ++k) sum[k] += mol * fraction[k];
+    if (periods != now_) settle();
+    now_ = periods;
+    add_scaled(fraction.data(), mol, size_, lately_.data());
+  }
+  // Must come before at().
+  void settle() {
+    for (const std::size_t p : now_) {
+      for (std::size_t k = 0; k < size_; ++k) sums_[p][k] += lately_[k];
     }
+    std::fill(lately_.begin(), lately_.end(), 0.0);
   }
   double at(std::size_t period, std::size_t cell) const { return sums_[period][cell]; }
 
  private:
   std::size_t size_;
+  std::vector<double> lately_;
+  std::vector<std::size_t> now_;
   std::vector<std::vector<double>> sums_;
 };
 
@@ -197,6 +214,7 @@ DomeLight make_dome_light(const LightSeries& series, const Dome& dome, SkyModel 
     const double mol = step.sky_umol * mol_per_umol_s;
     sums.add(sky_fractions(patches, sky, series, i), mol, in);
   }
+  sums.settle();
   spread_sky(sums, light);
   scale_to_days(light.beam, days, dome.lines() * dome.steps());
   scale_to_days(light.sky, days, dome.lines() * dome.steps());

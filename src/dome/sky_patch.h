@@ -3,6 +3,7 @@
 
 #include <vector>
 
+#include "dome/perez_kernel.h"
 #include "dome/sky_radiance.h"
 #include "sunfall/dome.h"
 #include "sunfall/sun.h"
@@ -23,12 +24,9 @@ class SkyPatches {
  private:
   template <typename Radiance>
   const std::vector<float>& by_band(Radiance radiance);
-  void normalise();
+  const std::vector<float>& normalised(double sum);
 
-  int sectors_;
-  int bands_;
-  std::vector<float> east_, north_;   // of sector middles
-  std::vector<float> sine_, cosine_;  // of band middles
+  PatchDirections patches_;
   std::vector<float> fraction_;
 };
 

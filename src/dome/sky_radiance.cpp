@@ -52,6 +52,13 @@ constexpr double kCoefficients[8][5][4] = {{{1.3525, -0.2576, -0.2690, -1.4366},
                                             {-7.2312, 0.4050, 13.3500, 0.6234},
                                             {1.5000, -0.6426, 1.8564, 0.5636}}};
 
+// Where the published form holds, per class: see sky_radiance.h.
+struct Range {
+  double lowest, highest;
+};
+constexpr Range kSoundBrightness[8] = {{0.0, 0.6}, {0.2, 0.6},  {0.2, 0.6}, {0.2, 0.6},
+                                       {0.2, 0.6}, {0.08, 0.4}, {0.0, 0.4}, {0.0, 0.15}};
+
 int clearness_class(double clearness) {
   return static_cast<int>(std::upper_bound(std::begin(kClassLimits), std::end(kClassLimits), clearness) -
                           std::begin(kClassLimits));
@@ -92,11 +99,8 @@ SkyShape perez_shape_unguarded(const SkyIndices& indices, Angle sun_zenith) {
 }
 
 SkyShape perez_shape(const SkyIndices& indices, Angle sun_zenith) {
-  SkyIndices guarded = indices;
-  const int k = clearness_class(indices.clearness);
-  if (k == 0) guarded.brightness = std::min(indices.brightness, 0.6);
-  if (k >= 1 && k <= 5) guarded.brightness = std::max(indices.brightness, 0.2);
-  if (k == 7) guarded.brightness = std::min(indices.brightness, 0.15);
+  const auto& [lowest, highest] = kSoundBrightness[clearness_class(indices.clearness)];
+  const SkyIndices guarded{indices.clearness, std::clamp(indices.brightness, lowest, highest)};
   SkyShape shape = perez_shape_unguarded(guarded, sun_zenith);
   shape.b = std::min(shape.b, -0.01);
   return shape;

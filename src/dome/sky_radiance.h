@@ -32,9 +32,11 @@ struct SkyIndices {
 };
 SkyIndices sky_indices(const SkyState& state);
 
-// The published parameters outside the region where they fail: brightness is held to at least 0.2
-// in classes 2 to 6 (below, the horizon term turns negative or exp(b / cos zenith) runs away) and
-// to at most 0.15 in class 8 (above, the exponent overflows).
+// The published parameters, with the brightness kept where they give a sky. Below, the horizon term
+// turns negative, or b positive so that exp(b / cos zenith) runs away; above, the same, or the glow
+// around the sun turns negative. Found by trying all suns: classes 2 to 5 fail below 0.1 to 0.15 and are
+// held above 0.2, the customary bound; class 6 below 0.08. From above: class 8 is held below 0.15 (fails
+// beyond 0.2), 6 and 7 below 0.4 (beyond 0.4 to 0.5), 1 to 5 below 0.6. b itself is held below -0.01.
 SkyShape perez_shape(const SkyIndices& indices, Angle sun_zenith);
 // The parameters without the guard, for comparison with published values.
 SkyShape perez_shape_unguarded(const SkyIndices& indices, Angle sun_zenith);
