@@ -1,0 +1,121 @@
+// A thin tall thing: a post 2 m wide and 15 m high on flat ground in cells of 1 m. Around it the map
+// must fall and rise with azimuth as the rays' does; a post seen from far away must not turn into
+// spokes, bright and dark by whether one of the dome's lines meets it.
+
+#include <fmt/format.h>
+#include <gtest/gtest.h>
+
+#include <algorithm>
+#include <cmath>
+#include <numbers>
+
+#include "geo/layer_writer.h"
+#include "light/series_checks.h"
+#include "map/scene.h"
+#include "oracle/comparison.h"
+
+namespace sunfall::oracle {
+namespace {
+
+constexpr double kHeight_m = 15.0, kHalfWidth_m = 1.0, kReceiver_m = 0.5;
+
+// Four cells around the middle of a map of 300 × 300.
+double post(double east, double north) {
+  return std::max(std::abs(east), std::abs(north)) < kHalfWidth_m ? kHeight_m : 0.0;
+}
+
+struct Ring {
+  std::vector<CellIndex> cells;  // by azimuth from the post, each once
+};
+Ring ring_of(const GridFrame& frame, double radius_m) {
+  Ring ring;
+  for (int k = 0; k < 720; ++k) {
+    const double azimuth = 2.0 * std::numbers::pi * k / 720;
+    const CellIndex cell{static_cast<int>(std::floor(0.5 * frame.columns + radius_m * std::sin(azimuth))),
+                         static_cast<int>(std::floor(0.5 * frame.rows - radius_m * std::cos(azimuth)))};
+    if (ring.cells.empty() || !(ring.cells.back() == cell)) ring.cells.push_back(cell);
+  }
+  return ring;
+}
+
+// Light of the month as a part of the open field's.
+std::vector<double> light_around(const std::vector<MonthShares>& shares, const MonthShares& open, int month) {
+  std::vector<double> out;
+  for (const MonthShares& s : shares) {
+    out.push_back((s.beam[month] * open.beam[month] + s.sky[month] * open.sky[month]) /
+                  (open.beam[month] + open.sky[month]));
+  }
+  return out;
+}
+
+double variation(const std::vector<double>& around) {
+  double sum = 0.0;
+  for (std::size_t i = 0; i < around.size(); ++i)
+    sum += std::abs(around[(i + 1) % around.size()] - around[i]);
+  return sum;
+}
+
+// The most light, as a part of the open field's, that comes in the width of one line of the dome from
+// below the post's top: what is gained or lost when a line just meets or misses the post. The sun's
+// path is smoothed over the neighbouring lines, so twice that.
+double one_line(const DomeLight& light, double radius_m, std::size_t month) {
+  const double rise = kHeight_m - kReceiver_m;
+  const double sine = rise / std::hypot(rise, radius_m - kHalfWidth_m);
+  double most = 0.0;
+  for (int line = 0; line < light.dome.lines(); ++line) {
+    double below = 0.0;
+    for (int step = 0; step <= static_cast<int>(sine * light.dome.steps()); ++step) {
+      const std::size_t at = light.index(line, step, month);
+      below += light.beam.level[at] + light.sky.level[at];
+    }
+    most = std::max(most, below);
+  }
+  return 2.0 * most / (light.beam.open[month] + light.sky.open[month]);
+}
+
+class Post : public ::testing::Test {
+ protected:
+  static Plan plan_in(const testing::Scene& scene) {
+    Plan plan;
+    plan.site.ground = scene.ground_file();
+    plan.site.surface = scene.surface_file();
+    plan.site.receiver_height_m = kReceiver_m;
+    plan.site.clock = Clock::parse("+01:00", "test");
+    plan.light = ClearSource{};
+    plan.periods = month_periods();
+    return plan;
+  }
+  testing::Scene scene_{[](double, double) { return 0.0; }, post};
+};
+
+TEST_F(Post, LeavesNoSpokes) {
+  const Ground ground(plan_in(scene_));
+  const OracleLight light(ground.series, SkyModel::clearness, ground.convergence);
+  for (const DomeQuality quality : {DomeQuality::standard, DomeQuality::fine}) {
+    const MapShares map(ground, quality);
+    const DomeLight tables =
+        make_dome_light(ground.series, Dome::of(quality), SkyModel::clearness, month_periods());
+    for (const double radius_m : {20.0, 60.0, 120.0}) {
+      const Ring ring = ring_of(ground.terrain.frame(), radius_m);
+      const std::vector<MonthShares> rays = ray_shares(ground, light, ring.cells, 1440);
+      std::vector<MonthShares> ours;
+      for (const CellIndex cell : ring.cells) ours.push_back(map.of(cell));
+      for (const int month : {0, 2, 5, 11}) {
+        const Spread s = spread(ours, rays, light.open(), Light::both, month);
+        const std::vector<double> a = light_around(ours, light.open(), month);
+        const std::vector<double> b = light_around(rays, light.open(), month);
+        const double loss = 1.0 - *std::min_element(b.begin(), b.end());
+        const double bound = one_line(tables, radius_m, month);
+        fmt::print(
+            "  {:8} {:3.0f} m month {:2}: {}; deepest shade {:.3f} %, bound {:.3f} %, variation {:.3f} "
+            "against {:.3f} %\n",
+            quality == DomeQuality::standard ? "standard" : "fine", radius_m, month + 1, told(s), 100 * loss,
+            100 * bound, 100 * variation(a), 100 * variation(b));
+        EXPECT_LT(s.most, bound);
+      }
+    }
+  }
+}
+
+}  // namespace
+}  // namespace sunfall::oracle
