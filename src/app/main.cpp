@@ -56,7 +56,9 @@ void finish_printing() {
 // Names from plans and files may hold anything; on a terminal they must not do anything.
 int tell(ErrorKind kind, const std::string& message) {
   constexpr std::size_t longest = 4000;
-  fmt::print(stderr, "sunfall: {}\n", sunfall::harmless(message, longest));
+  const std::string line = fmt::format("sunfall: {}\n", sunfall::harmless(message, longest));
+  // Where standard error is closed or full, the status alone tells.
+  static_cast<void>(std::fputs(line.c_str(), stderr));
   return sunfall::exit_status(kind);
 }
 

@@ -16,12 +16,15 @@ std::string duration_text(double seconds) {
   return fmt::format("{:.1f} h", seconds / 3600.0);
 }
 
+// Nobody may be reading (a closed pipe, a full disk); that is no reason to end the work.
+void tell(const std::string& text) { static_cast<void>(std::fputs(text.c_str(), stderr)); }
+
 }  // namespace
 
 TerminalProgress::TerminalProgress(bool quiet) : quiet_(quiet), terminal_(isatty(STDERR_FILENO) != 0) {}
 
 TerminalProgress::~TerminalProgress() {
-  if (line_open_) fmt::print(stderr, "\n");
+  if (line_open_) tell("\n");
 }
 
 bool TerminalProgress::stop_requested() const { return interrupted(); }
@@ -29,7 +32,7 @@ bool TerminalProgress::stop_requested() const { return interrupted(); }
 void TerminalProgress::advance(std::string_view stage, double done) {
   if (quiet_) return;
   if (stage != stage_) {
-    if (line_open_) fmt::print(stderr, "\n");
+    if (line_open_) tell("\n");
     line_open_ = false;
     stage_ = stage;
     shown_ = -1;
@@ -49,7 +52,7 @@ void TerminalProgress::draw_bar(double done) {
   const std::string left =
       done > 0.02 && done < 1.0 ? duration_text(passed / done * (1.0 - done)) + " left" : "";
   const std::string bar(static_cast<std::size_t>(percent) / 4, '#');
-  fmt::print(stderr, "\r{:<22} [{:<25}] {:3} % {:<14}", stage_, bar, percent, left);
+  tell(fmt::format("\r{:<22} [{:<25}] {:3} % {:<14}", stage_, bar, percent, left));
   std::fflush(stderr);
   line_open_ = true;
 }
@@ -58,7 +61,7 @@ void TerminalProgress::write_line(double done) {
   const int quarter = static_cast<int>(done * 4.0);
   if (quarter == shown_ || quarter == 0) return;
   shown_ = quarter;
-  fmt::print(stderr, "{}: {} %\n", stage_, quarter * 25);
+  tell(fmt::format("{}: {} %\n", stage_, quarter * 25));
 }
 
 }  // namespace sunfall
