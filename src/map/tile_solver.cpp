@@ -10,14 +10,35 @@ namespace sunfall {
 namespace {
 
 // Lines whose horizons are kept at a time: their tables should stay in the second cache.
-constexpr int kBatch = 24;
+constexpr int kBatch = 12;
+
+// The near rows are looked along once for looks that lie within this of it and share its heading.
+constexpr double kNearTolerance_deg = 2.0;
+
+double apart_deg(GridAzimuth a, GridAzimuth b) {
+  const double degrees = wrapped(a.from_grid_north - b.from_grid_north).degrees();
+  return std::min(degrees, 360.0 - degrees);
+}
 
 }  // namespace
 
 TileSolver::TileSolver(const Terrain& terrain, const DomeLight& light, ReceiverPlane plane)
-    : terrain_(terrain), dome_(light.dome), plane_(plane), level_(light) {
-  if (plane == ReceiverPlane::ground) slope_.emplace(light);
+    : terrain_(terrain), looks_(looks_of(light)), plane_(plane), level_(light, looks_) {
+  if (plane == ReceiverPlane::ground) slope_.emplace(light, looks_);
   sweep_options_.cell_m = terrain.frame().cell_m;
+}
+
+// The azimuth of the last look that near rows along it can serve together with this one, so that
+// looks on both sides share it.
+GridAzimuth TileSolver::near_azimuth_for(std::size_t look, Angle convergence) const {
+  const GridAzimuth own = to_grid(looks_[look].azimuth, convergence);
+  GridAzimuth last = own;
+  for (std::size_t next = look + 1; next < looks_.size(); ++next) {
+    const GridAzimuth azimuth = to_grid(looks_[next].azimuth, convergence);
+    if (apart_deg(own, azimuth) > kNearTolerance_deg || heading_of(azimuth) != heading_of(own)) break;
+    last = azimuth;
+  }
+  return last;
 }
 
 template <typename Take>
@@ -25,35 +46,31 @@ void TileSolver::batches(HorizonSweep& sweep, const CellWindow& window, Angle co
   const std::size_t cells = static_cast<std::size_t>(window.columns) * window.rows;
   std::vector<std::uint16_t> room(cells * kBatch);
   std::vector<const std::uint16_t*> steps;
-  int first = 0;
+  std::size_t first = 0;
   bool columns_now = false;
   const auto flush = [&] {
     if (!steps.empty()) take(first, HorizonBatch{steps, window.rows, window.columns, columns_now});
     steps.clear();
   };
-  for (int sector = 0; sector < dome_.sectors; ++sector) {
-    Heading near_heading{};
-    for (int k = 0; k < dome_.lines_per_sector; ++k) {
-      const int line = sector * dome_.lines_per_sector + k;
-      const GridAzimuth azimuth = to_grid(dome_.line_azimuth(line), convergence);
-      const Heading heading = heading_of(azimuth);
-      // The near rows are looked along once for a sector, at its middle line, unless the sector
-      // straddles two headings.
-      if (k == 0 || heading != near_heading) {
-        const int middle = sector * dome_.lines_per_sector + dome_.lines_per_sector / 2;
-        const GridAzimuth through = to_grid(dome_.line_azimuth(middle), convergence);
-        sweep.look_near(heading_of(through) == heading ? through : azimuth);
-        near_heading = heading;
-      }
-      if (steps.size() == kBatch || (!steps.empty() && columns_now != by_columns(heading))) flush();
-      if (steps.empty()) {
-        first = line;
-        columns_now = by_columns(heading);
-      }
-      std::uint16_t* place = room.data() + cells * steps.size();
-      sweep.look_far(azimuth, place);
-      steps.push_back(place);
+  std::optional<GridAzimuth> near_azimuth;
+  for (std::size_t look = 0; look < looks_.size(); ++look) {
+    const GridAzimuth azimuth = to_grid(looks_[look].azimuth, convergence);
+    const Heading heading = heading_of(azimuth);
+    // The near rows hardly change within a few degrees: one look along them serves three lines.
+    const bool near_serves = near_azimuth && apart_deg(*near_azimuth, azimuth) <= kNearTolerance_deg &&
+                             heading_of(*near_azimuth) == heading;
+    if (!near_serves) {
+      near_azimuth = near_azimuth_for(look, convergence);
+      sweep.look_near(*near_azimuth);
     }
+    if (steps.size() == kBatch || (!steps.empty() && columns_now != by_columns(heading))) flush();
+    if (steps.empty()) {
+      first = look;
+      columns_now = by_columns(heading);
+    }
+    std::uint16_t* place = room.data() + cells * steps.size();
+    sweep.look_far(azimuth, place);
+    steps.push_back(place);
   }
   flush();
 }
@@ -61,12 +78,12 @@ void TileSolver::batches(HorizonSweep& sweep, const CellWindow& window, Angle co
 void TileSolver::solve_level(HorizonSweep& sweep, Angle convergence, TileShares& out) const {
   const std::size_t cells = out.usable.size();
   const int blocks = level_.blocks();
-  std::vector<std::vector<std::uint32_t>> sums(blocks, std::vector<std::uint32_t>(cells * kColumnBlock, 0));
-  batches(sweep, out.window, convergence, [&](int first, const HorizonBatch& batch) {
+  std::vector<AlignedVector<std::uint32_t>> sums(blocks,
+                                                 AlignedVector<std::uint32_t>(cells * kColumnBlock, 0));
+  batches(sweep, out.window, convergence, [&](std::size_t first, const HorizonBatch& batch) {
     std::vector<const std::uint16_t*> tables(batch.steps.size());
     for (int block = 0; block < blocks; ++block) {
-      for (std::size_t i = 0; i < tables.size(); ++i)
-        tables[i] = level_.line(first + static_cast<int>(i), block);
+      for (std::size_t i = 0; i < tables.size(); ++i) tables[i] = level_.look(first + i, block);
       accumulate_level(batch, tables, sums[block].data());
     }
   });
@@ -103,20 +120,20 @@ void TileSolver::solve_slope(HorizonSweep& sweep, Angle convergence, TileShares&
   }
   // Open light on the plane: level - rise·facing summed over the lines, linear in the rise.
   std::vector<double> open_east(width, 0.0), open_north(width, 0.0);
-  std::vector<float> towards_east(dome_.lines()), towards_north(dome_.lines());
-  for (int line = 0; line < dome_.lines(); ++line) {
-    const Angle azimuth = to_grid(dome_.line_azimuth(line), convergence).from_grid_north;
-    towards_east[line] = static_cast<float>(sin(azimuth));
-    towards_north[line] = static_cast<float>(cos(azimuth));
+  std::vector<float> towards_east(looks_.size()), towards_north(looks_.size());
+  for (std::size_t look = 0; look < looks_.size(); ++look) {
+    const Angle azimuth = to_grid(looks_[look].azimuth, convergence).from_grid_north;
+    towards_east[look] = static_cast<float>(sin(azimuth));
+    towards_north[look] = static_cast<float>(cos(azimuth));
     for (int c = 0; c < width; ++c) {
-      open_east[c] += sin(azimuth) * slope_->open_facing(line)[c];
-      open_north[c] += cos(azimuth) * slope_->open_facing(line)[c];
+      open_east[c] += sin(azimuth) * slope_->open_facing(look)[c];
+      open_north[c] += cos(azimuth) * slope_->open_facing(look)[c];
     }
   }
   std::vector<float> sums(cells * width, 0.0F);
-  batches(sweep, window, convergence, [&](int first, const HorizonBatch& batch) {
+  batches(sweep, window, convergence, [&](std::size_t first, const HorizonBatch& batch) {
     std::vector<const float*> tables(batch.steps.size());
-    for (std::size_t i = 0; i < tables.size(); ++i) tables[i] = slope_->line(first + static_cast<int>(i));
+    for (std::size_t i = 0; i < tables.size(); ++i) tables[i] = slope_->look(first + i);
     SlopeTables slope{tables,
                       width,
                       east.data(),

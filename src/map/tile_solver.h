@@ -36,12 +36,13 @@ class TileSolver {
  private:
   void solve_level(HorizonSweep& sweep, Angle convergence, TileShares& out) const;
   void solve_slope(HorizonSweep& sweep, Angle convergence, TileShares& out) const;
-  // Calls take(first line, batch) with the horizons of several lines at a time.
+  GridAzimuth near_azimuth_for(std::size_t look, Angle convergence) const;
+  // Calls take(first look, batch) with the horizons of several looks at a time.
   template <typename Take>
   void batches(HorizonSweep& sweep, const CellWindow& window, Angle convergence, Take take) const;
 
   const Terrain& terrain_;
-  Dome dome_;
+  std::vector<Look> looks_;
   ReceiverPlane plane_;
   LossTable level_;                      // units and column count also serve sloped receivers
   std::optional<SlopeLossTable> slope_;  // only for receivers in the plane of the ground

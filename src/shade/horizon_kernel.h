@@ -6,8 +6,8 @@
 // Each line keeps the upper hull of the ground it has passed as a chain of parent links: the parent
 // of a point is the point that makes its horizon. From a receiver the horizon is found by walking
 // the chain while the slope still rises (Dozier and Frew 1990; Timonen and Westerholm 2010, O(1)
-// amortised). Rows are taken in pairs, of which one counts, at its own distance: the farther where it is
-// higher by more than a line of sight of middling slope rises between the two, else the nearer.
+// amortised). Rows are taken in groups, of which each line keeps one, at its own distance: the one
+// that a line of sight of middling slope meets first.
 
 #include <cstdint>
 
@@ -17,12 +17,15 @@ namespace sunfall {
 inline constexpr float kNothing = -1.0e20F;
 
 inline constexpr int kLinesPerBlock = 32;
-// Far horizons are found at every fourth row; a receiver there sees the pairs of rows that end at
-// least kFarDelay rows before it. Rows nearer than kNearRows are looked at one by one elsewhere.
-inline constexpr int kNodeStride = 4;
-inline constexpr int kFarDelay = 15;
-inline constexpr float kPairTangent = 0.25F;  // that middling slope
+inline constexpr int kRowsPerNode = 4;
+inline constexpr float kGroupTangent = 0.25F;  // that middling slope
+// Far horizons are found at every eighth row; a receiver there sees the groups that end at least
+// kFarDelay rows before it. Rows up to kNearRows before a cell are looked at one by one elsewhere,
+// so that none is missed on the rows between.
+inline constexpr int kNodeStride = 8;
+inline constexpr int kFarDelay = 9;
 inline constexpr int kNearRows = kFarDelay - 1 + kNodeStride - 1;
+static_assert(kNodeStride % kRowsPerNode == 0 && (kFarDelay - 1) % kRowsPerNode == 0);
 
 // One row of heights across the march. values[i] lies at v = first_v + i·cell.
 struct MarchRow {
@@ -42,7 +45,8 @@ struct SweepScratch {
 struct SweepJob {
   const MarchRow* rows = nullptr;  // far to near
   int row_count = 0;
-  int tile_row = 0;  // index of the row with u = 0, a multiple of 4; the rows after it are u = 1, 2, …
+  int tile_row =
+      0;  // index of the row with u = 0, a multiple of kRowsPerNode; the rows after it are u = 1, 2, …
   float lean = 0.0F;
   int first_line = 0;
   int blocks = 0;
@@ -54,10 +58,10 @@ struct SweepJob {
   float bend = 0.0F;               // the Earth's curve: metres of drop per row²
   float* far = nullptr;            // out: [node row][line], tangents ≥ 0
   int far_stride = 0;
-  SweepScratch scratch;  // room for (row_count / 2 + 2) nodes of one block
+  SweepScratch scratch;  // room for (row_count / kRowsPerNode + 2) nodes of one block
 };
 inline constexpr int kReceiverMargin = 8;
-inline constexpr int kMostRows = 4080;  // the packed code holds 2048 nodes
+inline constexpr int kMostRows = 2046 * kRowsPerNode;  // the packed code holds 2048 nodes
 
 // Number of node rows for a tile of that many rows.
 constexpr int node_rows(int tile_rows) { return (tile_rows - 1 + kNodeStride - 1) / kNodeStride + 1; }

@@ -80,12 +80,11 @@ class BlockSweep {
   }
 
   void run() {
-    int done = 0;  // pairs of rows taken so far
+    int done = 0;  // groups of rows taken so far
     for (int node_row = 0; node_row < node_rows(job_.tile_rows); ++node_row) {
       const int row = job_.tile_row + node_row * kNodeStride;
-      const int pairs = (row - kFarDelay + 1) / 2;
       if (!in_tile(node_row * kNodeStride)) continue;
-      for (; done < pairs; ++done) take_pair(done);
+      for (; done < (row - kFarDelay + 1) / kRowsPerNode; ++done) take_group(done);
       look(node_row);
     }
   }
@@ -137,25 +136,31 @@ class BlockSweep {
     return Lanes::sub(mixed, Lanes::set(sink));
   }
 
-  void take_pair(int pair) {
-    const MarchRow& first = job_.rows[2 * pair];
-    const MarchRow& second = job_.rows[2 * pair + 1];
-    const int node = pair + 1;
-    Float z0[kParts], z1[kParts];
-    sample(first, z0);
-    sample(second, z1);
-    const Float advantage = Lanes::set(kPairTangent * (second.u - first.u) / job_.tangent_per_slope);
+  // Of the rows of a group, each line keeps the one that a line of sight of middling slope meets first.
+  void take_group(int group) {
+    const MarchRow* rows = job_.rows + kRowsPerNode * group;
+    const int node = group + 1;
+    const float nearest = rows[kRowsPerNode - 1].u;
     Walk walks[kParts];
     Int codes[kParts];
-    for (int part = 0; part < kParts; ++part) {
-      const Mask use_first = Lanes::greater(Lanes::sub(z0[part], z1[part]), advantage);
-      Walk& walk = walks[part];
-      walk.eye_height = Lanes::choose(use_first, z0[part], z1[part]);
-      walk.eye_u = Lanes::choose(use_first, Lanes::set(first.u), Lanes::set(second.u));
-      codes[part] =
-          Lanes::choose(use_first, Lanes::set(packed(first.u, node)), Lanes::set(packed(second.u, node)));
-      aim(walk, part);
+    Float best[kParts];
+    for (int i = 0; i < kRowsPerNode; ++i) {
+      Float z[kParts];
+      sample(rows[i], z);
+      const Float handicap = Lanes::set(kGroupTangent * (nearest - rows[i].u) / job_.tangent_per_slope);
+      for (int part = 0; part < kParts; ++part) {
+        Walk& walk = walks[part];
+        const Float merit = Lanes::sub(z[part], handicap);
+        // The nearer row wins a tie.
+        const Mask keep = i == 0 ? Lanes::greater(merit, merit) : Lanes::greater(best[part], merit);
+        best[part] = i == 0 ? merit : Lanes::choose(keep, best[part], merit);
+        walk.eye_height = i == 0 ? z[part] : Lanes::choose(keep, walk.eye_height, z[part]);
+        walk.eye_u = i == 0 ? Lanes::set(rows[i].u) : Lanes::choose(keep, walk.eye_u, Lanes::set(rows[i].u));
+        const Int code = Lanes::set(packed(rows[i].u, node));
+        codes[part] = i == 0 ? code : Lanes::choose(keep, codes[part], code);
+      }
     }
+    for (int part = 0; part < kParts; ++part) aim(walks[part], part);
     walk_all(walks, job_.scratch);
     for (int part = 0; part < kParts; ++part) {
       height_[part] = walks[part].eye_height;

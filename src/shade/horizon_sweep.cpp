@@ -9,6 +9,11 @@
 namespace sunfall {
 namespace {
 
+// Near rows that one look serves for directions a degree or two apart (at seven rows they lie a
+// fifth of a cell apart), and how many of them are also looked at halfway.
+constexpr int kSharedRows = 7;
+constexpr int kHalfRows = 3;
+
 // The same grid, stored column by column.
 LevelGrid turned(const LevelGrid& grid) {
   LevelGrid out{grid.level, grid.window, std::vector<float>(grid.heights.size())};
@@ -104,10 +109,9 @@ void HorizonSweep::add_level_rows(March& m, int level) {
   }
 }
 
-// The kernel pairs rows from the front; the row with u = 0 must begin a pair.
+// The kernel groups rows from the front; the row with u = 0 must begin a group.
 void HorizonSweep::align_rows(March& m) {
-  const std::size_t before = m.march_rows.size() - static_cast<std::size_t>(m.rows);
-  if (before % 2 != 0) {
+  while ((m.march_rows.size() - static_cast<std::size_t>(m.rows)) % kRowsPerNode != 0) {
     MarchRow empty;
     empty.u = m.march_rows.front().u - 1.0F;
     m.march_rows.insert(m.march_rows.begin(), empty);
@@ -134,26 +138,49 @@ void HorizonSweep::turn_receivers(March& m) {
   }
 }
 
+// The rows from `first` to `last` before row u, along the direction.
+void HorizonSweep::append_near_rows(const March& m, const Direction& direction, int u, int first, int last,
+                                    std::vector<NearRow>& out) {
+  for (int n = first; n <= last; ++n) {
+    const float shift = -direction.lean * static_cast<float>(n);
+    const float whole = std::floor(shift);
+    out.push_back({m.near[static_cast<std::size_t>(u + kNearRows - n)] + static_cast<int>(whole), nullptr,
+                   shift - whole, 1.0F / static_cast<float>(n)});
+  }
+}
+
+// Halfway between two rows a cell's ground lies between its two diagonals: the mean of the rows'
+// heights where the ray passes. On steep convex ground the rows alone would miss it.
+void HorizonSweep::append_half_rows(const March& m, const Direction& direction, int u,
+                                    std::vector<NearRow>& out) {
+  for (int n = 1; n <= kHalfRows; ++n) {
+    const float distance = static_cast<float>(n) - 0.5F;
+    const float shift = -direction.lean * distance;
+    const float whole = std::floor(shift);
+    const int across = static_cast<int>(whole);
+    out.push_back({m.near[static_cast<std::size_t>(u + kNearRows - n)] + across,
+                   m.near[static_cast<std::size_t>(u + kNearRows - n + 1)] + across, shift - whole,
+                   1.0F / distance});
+  }
+}
+
+const float* HorizonSweep::eyes(const March& m, int u) {
+  return m.receivers.data() + static_cast<std::size_t>(u + kReceiverMargin) * m.receiver_stride +
+         kReceiverMargin;
+}
+
 void HorizonSweep::look_near(GridAzimuth azimuth) {
   const Direction direction = direction_of(azimuth);
   const March& m = march(direction.heading);
   near_stride_ = (m.width + kRowGroup - 1) / kRowGroup * kRowGroup;
   near_.resize(static_cast<std::size_t>(m.rows) * near_stride_);
+  std::vector<NearRow> rows;
   for (int u = 0; u < m.rows; ++u) {
-    NearRow rows[kNearRows];
-    for (int n = 1; n <= kNearRows; ++n) {
-      const float shift = -direction.lean * static_cast<float>(n);
-      const float whole = std::floor(shift);
-      rows[n - 1] = {m.near[static_cast<std::size_t>(u + kNearRows - n)] + static_cast<int>(whole), shift - whole,
-                     1.0F / static_cast<float>(n)};
-    }
-    NearLook look;
-    look.eyes = m.receivers.data() + static_cast<std::size_t>(u + kReceiverMargin) * m.receiver_stride + kReceiverMargin;
-    look.rows = rows;
-    look.tangent_per_slope = static_cast<float>(1.0 / (options_.cell_m * direction.row_length));
-    look.width = m.width;
-    look.out = near_.data() + static_cast<std::size_t>(u) * near_stride_;
-    look_along_near_rows(look);
+    rows.clear();
+    append_near_rows(m, direction, u, 1, kSharedRows, rows);
+    append_half_rows(m, direction, u, rows);
+    look_along_near_rows(
+        {eyes(m, u), nullptr, rows, m.width, near_.data() + static_cast<std::size_t>(u) * near_stride_});
   }
 }
 
@@ -162,7 +189,7 @@ void HorizonSweep::sweep_far(const March& m, const Direction& direction, int fir
   const double bend = step_m * step_m * (1.0 - options_.refraction) / (2.0 * options_.earth_radius_m);
   std::vector<MarchRow> rows = m.march_rows;
   for (MarchRow& row : rows) row.sink = static_cast<float>(bend * row.u * row.u);
-  const std::size_t nodes = rows.size() / 2 + 2;
+  const std::size_t nodes = rows.size() / kRowsPerNode + 2;
   parent_height_.resize(nodes * kLinesPerBlock);
   parent_code_.resize(nodes * kLinesPerBlock);
   far_stride_ = blocks * kLinesPerBlock;
@@ -197,22 +224,25 @@ void HorizonSweep::look_far(GridAzimuth azimuth, std::uint16_t* steps) {
       static_cast<int>(std::ceil(static_cast<float>(m.width) + std::max(0.0F, -direction.lean * last_u))) + 1;
   const int blocks = (last_line - first_line + 1 + kLinesPerBlock) / kLinesPerBlock;
   sweep_far(m, direction, first_line, blocks);
+  std::vector<float> near(static_cast<std::size_t>(near_stride_));
+  std::vector<NearRow> rows;
   for (int u = 0; u < m.rows; ++u) {
+    rows.clear();
+    append_near_rows(m, direction, u, kSharedRows + 1, kNearRows, rows);
+    look_along_near_rows(
+        {eyes(m, u), near_.data() + static_cast<std::size_t>(u) * near_stride_, rows, m.width, near.data()});
     FarRead read;
     const int node = u / kNodeStride;
     const int next = std::min(node + 1, node_rows(m.rows) - 1);
     read.weight = static_cast<float>(u % kNodeStride) / kNodeStride;
-    const float shift0 =
-        -direction.lean * static_cast<float>(node * kNodeStride) - static_cast<float>(first_line);
-    const float shift1 =
-        -direction.lean * static_cast<float>(next * kNodeStride) - static_cast<float>(first_line);
-    read.first =
-        far_.data() + static_cast<std::size_t>(node) * far_stride_ + static_cast<int>(std::floor(shift0));
-    read.first_fraction = shift0 - std::floor(shift0);
-    read.second =
-        far_.data() + static_cast<std::size_t>(next) * far_stride_ + static_cast<int>(std::floor(shift1));
-    read.second_fraction = shift1 - std::floor(shift1);
-    read.near = near_.data() + static_cast<std::size_t>(u) * near_stride_;
+    // A cell reads its own line, at both node rows: the same things stand along it.
+    const float line = -direction.lean * static_cast<float>(u) - static_cast<float>(first_line);
+    const float whole = std::floor(line);
+    read.fraction = line - whole;
+    read.before = far_.data() + static_cast<std::size_t>(node) * far_stride_ + static_cast<int>(whole);
+    read.after = far_.data() + static_cast<std::size_t>(next) * far_stride_ + static_cast<int>(whole);
+    read.near = near.data();
+    read.tangent_per_slope = static_cast<float>(1.0 / (options_.cell_m * direction.row_length));
     read.width = m.width;
     const int row = m.reversed ? m.rows - 1 - u : u;
     read.steps = steps + static_cast<std::size_t>(row) * m.width;

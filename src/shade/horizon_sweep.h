@@ -2,15 +2,16 @@
 // Horizons of all cells of a tile, one direction of light at a time.
 //
 // Near rows (kNearRows) are looked at one by one along the direction from each cell's own centre,
-// exact for a surface that is linear between cell centres along a row. Beyond them the horizon
-// comes from parallel lines that each keep a hull (horizon_kernel.h), read between the two lines
-// beside a cell and between two node rows.
+// the nearest also halfway, for a surface that is linear between cell centres. Beyond them the
+// horizon comes from parallel lines that each keep a hull (horizon_kernel.h), read between the two
+// lines beside a cell and between two node rows.
 
 #include <array>
 #include <cstdint>
 #include <vector>
 
 #include "shade/horizon_kernel.h"
+#include "shade/row_loops.h"
 #include "shade/terrain.h"
 #include "sunfall/angle.h"
 
@@ -33,8 +34,8 @@ class HorizonSweep {
  public:
   HorizonSweep(const TerrainTile& tile, const SweepOptions& options);
 
-  // Looks along the near rows at this azimuth; the far sweeps that follow combine with it, and may
-  // differ from it by a few degrees within the same heading.
+  // Looks along the nearest rows at this azimuth; the far looks that follow build on it, and may
+  // differ from it by a degree or two within the same heading.
   void look_near(GridAzimuth azimuth);
   // Writes one horizon step (dome/horizon_steps.h) per tile cell: row by row, or column by column
   // for light from east or west.
@@ -67,6 +68,10 @@ class HorizonSweep {
   static void align_rows(March& m);
   void turn_receivers(March& m);
   const LevelGrid& oriented(int level, bool columns);
+  static const float* eyes(const March& m, int u);
+  static void append_near_rows(const March& m, const Direction& direction, int u, int first, int last,
+                               std::vector<NearRow>& out);
+  static void append_half_rows(const March& m, const Direction& direction, int u, std::vector<NearRow>& out);
   void sweep_far(const March& m, const Direction& direction, int first_line, int blocks);
 
   const TerrainTile& tile_;
@@ -74,7 +79,7 @@ class HorizonSweep {
   std::array<March, 4> marches_;
   std::vector<LevelGrid> turned_;  // levels stored column by column
   int near_stride_ = 0;
-  std::vector<float> near_;        // tangents, u by v
+  std::vector<float> near_;  // slopes to the nearest rows, u by v
   std::vector<float> far_;
   int far_stride_ = 0;
   std::vector<float> parent_height_;

@@ -21,6 +21,18 @@ inline Cells load(const float* p) {
   return cells;
 }
 
+inline Cells along(const float* row, float fraction) {
+  const Cells left = load(row);
+  return left + fraction * (load(row + 1) - left);
+}
+
+inline Cells raised(Cells best, const NearRow& near, int begin, Cells eyes) {
+  Cells height = along(near.values + begin, near.fraction);
+  if (near.other) height = 0.5F * (height + along(near.other + begin, near.fraction));
+  const Cells slope = (height - eyes) * near.per_row;
+  return slope > best ? slope : best;
+}
+
 }  // namespace
 
 // Two groups of cells stay in registers while the rows pass. The last groups of a row reach beyond
@@ -29,29 +41,29 @@ SUNFALL_CLONES void look_along_near_rows(const NearLook& look) {
   for (int begin = 0; begin < look.width; begin += 2 * kCells) {
     const Cells eyes0 = load(look.eyes + begin), eyes1 = load(look.eyes + begin + kCells);
     Cells best0 = {}, best1 = {};
-    for (int n = 1; n <= kNearRows; ++n) {
-      const NearRow& near = look.rows[n - 1];
-      const float* row = near.values + begin;
-      const Cells left0 = load(row), left1 = load(row + kCells);
-      const Cells height0 = left0 + near.fraction * (load(row + 1) - left0);
-      const Cells height1 = left1 + near.fraction * (load(row + kCells + 1) - left1);
-      const Cells slope0 = (height0 - eyes0) * near.per_row, slope1 = (height1 - eyes1) * near.per_row;
-      best0 = slope0 > best0 ? slope0 : best0;
-      best1 = slope1 > best1 ? slope1 : best1;
+    if (look.start) {
+      best0 = load(look.start + begin);
+      best1 = load(look.start + begin + kCells);
     }
-    best0 *= look.tangent_per_slope;
-    best1 *= look.tangent_per_slope;
+    for (const NearRow& near : look.rows) {
+      best0 = raised(best0, near, begin, eyes0);
+      best1 = raised(best1, near, begin + kCells, eyes1);
+    }
     __builtin_memcpy(look.out + begin, &best0, sizeof best0);
     __builtin_memcpy(look.out + begin + kCells, &best1, sizeof best1);
   }
 }
 
+// Between two node rows the cotangent is interpolated: it is what changes evenly as a cell moves
+// away from one obstacle. A node that sees nothing makes the far horizon open up to the next node;
+// what stands there is among the near rows.
 SUNFALL_CLONES void combine_near_and_far(const FarRead& read) {
+  const float before_weight = 1.0F - read.weight;
   for (int v = 0; v < read.width; ++v) {
-    const float a = read.first[v] + read.first_fraction * (read.first[v + 1] - read.first[v]);
-    const float b = read.second[v] + read.second_fraction * (read.second[v + 1] - read.second[v]);
-    const float far = a + read.weight * (b - a);
-    read.steps[v] = horizon_step(std::max(read.near[v], far));
+    const float a = read.before[v] + read.fraction * (read.before[v + 1] - read.before[v]);
+    const float b = read.after[v] + read.fraction * (read.after[v + 1] - read.after[v]);
+    const float far = a * b / (before_weight * b + read.weight * a + 1e-12F);
+    read.steps[v] = horizon_step(std::max(read.near[v] * read.tangent_per_slope, far));
   }
 }
 

@@ -3,34 +3,37 @@
 // instruction set.
 
 #include <cstdint>
+#include <span>
 
 namespace sunfall {
 
 inline constexpr int kRowGroup = 32;  // rows are worked on in whole groups of cells
 
-// A row some rows before the receivers', seen along the ray: at v the height lies `fraction` of the
-// way from values[v] to values[v + 1].
+// A row, or a place halfway between two rows, some rows before the receivers', seen along the ray: at
+// v the height is the mean of both rows' heights at values[v] + fraction·(values[v + 1] - values[v]).
 struct NearRow {
   const float* values = nullptr;
+  const float* other = nullptr;  // the second row; nullptr for a whole row
   float fraction = 0.0F;
   float per_row = 1.0F;  // one over the rows between
 };
 struct NearLook {
-  const float* eyes = nullptr;  // receiver heights, v = 0 …, readable to the end of the last group
-  const NearRow* rows = nullptr;  // kNearRows of them, nearest first; readable as far and one more
-  float tangent_per_slope = 1.0F;
+  const float* eyes = nullptr;    // receiver heights, v = 0 …, readable to the end of the last group
+  const float* start = nullptr;   // slopes found before, as `out`; nullptr for the level
+  std::span<const NearRow> rows;  // readable as far as eyes, and one more
   int width = 0;
-  float* out = nullptr;  // tangents ≥ 0, with room for whole groups
+  float* out = nullptr;  // slopes ≥ 0, metres per row, with room for whole groups
 };
 void look_along_near_rows(const NearLook& look);
 
+// A cell reads the lines beside it at the node rows before and after its own.
 struct FarRead {
-  const float* first = nullptr;  // node row at or before the row, at the line left of v = 0
-  const float* second = nullptr;
-  float first_fraction = 0.0F;  // how far v = 0 lies from that line towards the next
-  float second_fraction = 0.0F;
-  float weight = 0.0F;  // of the second node row
-  const float* near = nullptr;
+  const float* before = nullptr;  // tangents at the node rows, at the line left of v = 0
+  const float* after = nullptr;
+  float fraction = 0.0F;           // how far v = 0 lies from that line towards the next
+  float weight = 0.0F;             // of the node row after
+  const float* near = nullptr;     // slopes
+  float tangent_per_slope = 1.0F;  // of `near`
   int width = 0;
   std::uint16_t* steps = nullptr;
 };

@@ -107,7 +107,8 @@ void Terrain::read_all(Progress& progress) {
   std::vector<float> strip;
   for (int row = 0; row < frame_.rows; row += kStrip) {
     if (progress.stop_requested())
-      throw Error(ErrorKind::interrupted, {"stopped while reading the ground", "", "", "Run the same command again"});
+      throw Error(ErrorKind::interrupted,
+                  {"stopped while reading the ground", "", "", "Run the same command again"});
     const CellWindow window{0, row, frame_.columns, std::min(kStrip, frame_.rows - row)};
     strip.resize(static_cast<std::size_t>(window.columns) * window.rows);
     hiding_heights(window, strip.data());
