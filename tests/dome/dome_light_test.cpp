@@ -103,6 +103,45 @@ TEST(DomeLight, FacingGoesWithTheZenithAngle) {
   }
 }
 
+// Where the light comes from on the whole: the sum of level light times the direction on the ground
+// (east, north) and times the sine.
+struct Resultant {
+  double east = 0.0, north = 0.0, sine = 0.0;
+  void add(double level, double azimuth, double elevation_sine) {
+    east += level * std::sin(azimuth);
+    north += level * std::cos(azimuth);
+    sine += level * elevation_sine;
+  }
+};
+
+// Bilinear sharing keeps the middle of the light: the resultant shrinks by the cosine of half a line at
+// most (1 - 1e-4 at 216 lines), and only the lowest half step, held at its middle, moves up in sine.
+TEST(DomeLight, BeamComesFromTheSun) {
+  const LightSeries series = light_of(ClearSource{}, place_at(52.0));
+  const Dome& dome = kDomes[1];
+  const DomeLight light = make_dome_light(series, dome, SkyModel::isotropic, month_periods());
+  const auto days = days_of_months(series);
+  for (const int month : {0, 3, 6, 9}) {
+    Resultant sun, table;
+    for (std::size_t i = 0; i < series.steps.size(); ++i) {
+      if (month_of_step(series, i) != month || series.steps[i].beam_umol <= 0.0F) continue;
+      const SkyDirection &a = series.sun.edges[i], &b = series.sun.edges[i + 1];
+      sun.add(double(series.steps[i].beam_umol) * 600e-6 / days[month],
+              std::atan2(a.east + b.east, a.north + b.north), std::max(0.0, 0.5 * (a.up + b.up)));
+    }
+    for (int line = 0; line < dome.lines(); ++line) {
+      for (int step = 0; step < dome.steps(); ++step) {
+        table.add(light.beam.level[light.index(line, step, month)],
+                  dome.line_azimuth(line).from_true_north.radians(), (step + 0.5) / dome.steps());
+      }
+    }
+    const double open = light.beam.open[month];
+    EXPECT_NEAR(table.east, sun.east, 5e-4 * open) << month;
+    EXPECT_NEAR(table.north, sun.north, 5e-4 * open) << month;
+    EXPECT_NEAR(table.sine, sun.sine, 5e-4 * open) << month;
+  }
+}
+
 LightSeries turned(LightSeries series, Angle clockwise) {
   for (SkyDirection& d : series.sun.edges) {
     const double east = d.east * cos(clockwise) + d.north * sin(clockwise);
