@@ -24,16 +24,14 @@ double post(double east, double north) {
   return std::max(std::abs(east), std::abs(north)) < kHalfWidth_m ? kHeight_m : 0.0;
 }
 
-struct Ring {
-  std::vector<CellIndex> cells;  // by azimuth from the post, each once
-};
-Ring ring_of(const GridFrame& frame, double radius_m) {
-  Ring ring;
+// Cells by azimuth from the post, neighbours differing.
+std::vector<CellIndex> ring_of(const GridFrame& frame, double radius_m) {
+  std::vector<CellIndex> ring;
   for (int k = 0; k < 720; ++k) {
     const double azimuth = 2.0 * std::numbers::pi * k / 720;
     const CellIndex cell{static_cast<int>(std::floor(0.5 * frame.columns + radius_m * std::sin(azimuth))),
                          static_cast<int>(std::floor(0.5 * frame.rows - radius_m * std::cos(azimuth)))};
-    if (ring.cells.empty() || !(ring.cells.back() == cell)) ring.cells.push_back(cell);
+    if (ring.empty() || !(ring.back() == cell)) ring.push_back(cell);
   }
   return ring;
 }
@@ -55,10 +53,12 @@ double variation(const std::vector<double>& around) {
   return sum;
 }
 
-// The most light, as a part of the open field's, that comes in the width of one line of the dome from
-// below the post's top: what is gained or lost when a line just meets or misses the post. The sun's
-// path is smoothed over the neighbouring lines, so twice that.
-double one_line(const DomeLight& light, double radius_m, std::size_t month) {
+// A line of the dome stands for the azimuths within half a line on either side. Over the width of the
+// post, lines that meet it are counted right to within one; the beam's tables spread the sun's path over
+// the lines beside it, which moves light by up to one line more. So the error stays below the light of
+// two lines from below the post's top. Near rows are looked along once for all lines of a sector; the
+// same is asked of them. Larger than that would be a spoke.
+double two_lines(const DomeLight& light, double radius_m, std::size_t month) {
   const double rise = kHeight_m - kReceiver_m;
   const double sine = rise / std::hypot(rise, radius_m - kHalfWidth_m);
   double most = 0.0;
@@ -96,16 +96,16 @@ TEST_F(Post, LeavesNoSpokes) {
     const DomeLight tables =
         make_dome_light(ground.series, Dome::of(quality), SkyModel::clearness, month_periods());
     for (const double radius_m : {20.0, 60.0, 120.0}) {
-      const Ring ring = ring_of(ground.terrain.frame(), radius_m);
-      const std::vector<MonthShares> rays = ray_shares(ground, light, ring.cells, 1440);
+      const std::vector<CellIndex> ring = ring_of(ground.terrain.frame(), radius_m);
+      const std::vector<MonthShares> rays = ray_shares(ground, light, ring, 1440);
       std::vector<MonthShares> ours;
-      for (const CellIndex cell : ring.cells) ours.push_back(map.of(cell));
+      for (const CellIndex cell : ring) ours.push_back(map.of(cell));
       for (const int month : {0, 2, 5, 11}) {
         const Spread s = spread(ours, rays, light.open(), Light::both, month);
         const std::vector<double> a = light_around(ours, light.open(), month);
         const std::vector<double> b = light_around(rays, light.open(), month);
         const double loss = 1.0 - *std::min_element(b.begin(), b.end());
-        const double bound = one_line(tables, radius_m, month);
+        const double bound = two_lines(tables, radius_m, month);
         fmt::print(
             "  {:8} {:3.0f} m month {:2}: {}; deepest shade {:.3f} %, bound {:.3f} %, variation {:.3f} "
             "against {:.3f} %\n",
