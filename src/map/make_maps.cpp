@@ -1,5 +1,6 @@
 // Tiles, one after another on every core: terrain around the tile, shares, light, layers.
 
+#include <tbb/enumerable_thread_specific.h>
 #include <tbb/parallel_for.h>
 #include <tbb/task_arena.h>
 
@@ -127,13 +128,14 @@ MapResult make_maps(const Plan& plan, const DomeLight& light,
     std::size_t usable = 0;
   };
   std::vector<Sum> sums(tiles.size());
+  tbb::enumerable_thread_specific<TileRoom> rooms;
   on_all_cores(options.jobs, tiles.size(), [&](std::size_t i) {
     stop_if_asked(progress);
     const CellWindow& window = tiles[i];
     const CellIndex middle{window.column + window.columns / 2, window.row + window.rows / 2};
     const Angle convergence = geo_place(frame, frame.centre(middle)).convergence;
     const TerrainTile tile = terrain.tile(window);
-    const TileShares shares = solver.solve(tile, convergence);
+    const TileShares shares = solver.solve(tile, convergence, rooms.local());
     TileLight tile_light = light_of(shares, result.open, light.periods, plan.light_options.year);
     tile_light.sight = tile_sight(tile, frame.cell_m);
     for (std::size_t cell = 0; cell < shares.usable.size(); ++cell) {

@@ -42,9 +42,10 @@ GridAzimuth TileSolver::near_azimuth_for(std::size_t look, Angle convergence) co
 }
 
 template <typename Take>
-void TileSolver::batches(HorizonSweep& sweep, const CellWindow& window, Angle convergence, Take take) const {
+void TileSolver::batches(HorizonSweep& sweep, const CellWindow& window, Angle convergence, TileRoom& room,
+                         Take take) const {
   const std::size_t cells = static_cast<std::size_t>(window.columns) * window.rows;
-  std::vector<std::uint16_t> room(cells * kBatch);
+  room.steps.resize(cells * kBatch);
   std::vector<const std::uint16_t*> steps;
   std::size_t first = 0;
   bool columns_now = false;
@@ -68,19 +69,20 @@ void TileSolver::batches(HorizonSweep& sweep, const CellWindow& window, Angle co
       first = look;
       columns_now = by_columns(heading);
     }
-    std::uint16_t* place = room.data() + cells * steps.size();
+    std::uint16_t* place = room.steps.data() + cells * steps.size();
     sweep.look_far(azimuth, place);
     steps.push_back(place);
   }
   flush();
 }
 
-void TileSolver::solve_level(HorizonSweep& sweep, Angle convergence, TileShares& out) const {
+void TileSolver::solve_level(HorizonSweep& sweep, Angle convergence, TileRoom& room, TileShares& out) const {
   const std::size_t cells = out.usable.size();
   const int blocks = level_.blocks();
-  std::vector<AlignedVector<std::uint32_t>> sums(blocks,
-                                                 AlignedVector<std::uint32_t>(cells * kColumnBlock, 0));
-  batches(sweep, out.window, convergence, [&](std::size_t first, const HorizonBatch& batch) {
+  std::vector<AlignedVector<std::uint32_t>>& sums = room.level_sums;
+  sums.resize(blocks);
+  for (auto& sum : sums) sum.assign(cells * kColumnBlock, 0);
+  batches(sweep, out.window, convergence, room, [&](std::size_t first, const HorizonBatch& batch) {
     std::vector<const std::uint16_t*> tables(batch.steps.size());
     for (int block = 0; block < blocks; ++block) {
       for (std::size_t i = 0; i < tables.size(); ++i) tables[i] = level_.look(first + i, block);
@@ -97,7 +99,7 @@ void TileSolver::solve_level(HorizonSweep& sweep, Angle convergence, TileShares&
   }
 }
 
-void TileSolver::solve_slope(HorizonSweep& sweep, Angle convergence, TileShares& out) const {
+void TileSolver::solve_slope(HorizonSweep& sweep, Angle convergence, TileRoom& room, TileShares& out) const {
   const CellWindow& window = out.window;
   const std::size_t cells = out.usable.size();
   const int width = slope_->padded();
@@ -130,8 +132,9 @@ void TileSolver::solve_slope(HorizonSweep& sweep, Angle convergence, TileShares&
       open_north[c] += cos(azimuth) * slope_->open_facing(look)[c];
     }
   }
-  std::vector<float> sums(cells * width, 0.0F);
-  batches(sweep, window, convergence, [&](std::size_t first, const HorizonBatch& batch) {
+  std::vector<float>& sums = room.slope_sums;
+  sums.assign(cells * width, 0.0F);
+  batches(sweep, window, convergence, room, [&](std::size_t first, const HorizonBatch& batch) {
     std::vector<const float*> tables(batch.steps.size());
     for (std::size_t i = 0; i < tables.size(); ++i) tables[i] = slope_->look(first + i);
     SlopeTables slope{tables,
@@ -154,7 +157,7 @@ void TileSolver::solve_slope(HorizonSweep& sweep, Angle convergence, TileShares&
   }
 }
 
-TileShares TileSolver::solve(const TerrainTile& tile, Angle convergence) const {
+TileShares TileSolver::solve(const TerrainTile& tile, Angle convergence, TileRoom& room) const {
   TileShares out;
   out.window = tile.window;
   out.columns = columns();
@@ -162,9 +165,9 @@ TileShares TileSolver::solve(const TerrainTile& tile, Angle convergence) const {
   out.shares.resize(tile.usable.size() * out.columns);
   HorizonSweep sweep(tile, sweep_options_);
   if (plane_ == ReceiverPlane::level)
-    solve_level(sweep, convergence, out);
+    solve_level(sweep, convergence, room, out);
   else
-    solve_slope(sweep, convergence, out);
+    solve_slope(sweep, convergence, room, out);
   return out;
 }
 

@@ -23,23 +23,34 @@ struct TileShares {
   const float* of(std::size_t cell) const { return shares.data() + cell * columns; }
 };
 
+// Room that a thread uses for one tile after another, so that memory is not asked for anew each time.
+struct TileRoom {
+  std::vector<std::uint16_t> steps;
+  std::vector<AlignedVector<std::uint32_t>> level_sums;
+  std::vector<float> slope_sums;
+};
+
 class TileSolver {
  public:
   // `plane`: level receivers, or receivers in the plane of the ground.
   TileSolver(const Terrain& terrain, const DomeLight& light, ReceiverPlane plane);
 
   // May be called from several threads. `convergence` is that of the tile's centre.
-  TileShares solve(const TerrainTile& tile, Angle convergence) const;
+  TileShares solve(const TerrainTile& tile, Angle convergence, TileRoom& room) const;
+  TileShares solve(const TerrainTile& tile, Angle convergence) const {
+    TileRoom room;
+    return solve(tile, convergence, room);
+  }
 
   int columns() const { return level_.columns(); }
 
  private:
-  void solve_level(HorizonSweep& sweep, Angle convergence, TileShares& out) const;
-  void solve_slope(HorizonSweep& sweep, Angle convergence, TileShares& out) const;
+  void solve_level(HorizonSweep& sweep, Angle convergence, TileRoom& room, TileShares& out) const;
+  void solve_slope(HorizonSweep& sweep, Angle convergence, TileRoom& room, TileShares& out) const;
   GridAzimuth near_azimuth_for(std::size_t look, Angle convergence) const;
   // Calls take(first look, batch) with the horizons of several looks at a time.
   template <typename Take>
-  void batches(HorizonSweep& sweep, const CellWindow& window, Angle convergence, Take take) const;
+  void batches(HorizonSweep& sweep, const CellWindow& window, Angle convergence, TileRoom& room, Take take) const;
 
   const Terrain& terrain_;
   std::vector<Look> looks_;

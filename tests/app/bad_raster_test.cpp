@@ -184,41 +184,30 @@ TEST(BadRaster, SurfaceInAnotherCrs) {
   expect_alignable(order, "coordinate reference system");
 }
 
-// 36 thousand million cells that a small file claims to hold.
+// A file of a few kilobytes that claims to hold any number of 1 m cells.
+void make_boasting_raster(const fs::path& file, const std::string& columns, const std::string& rows) {
+  tool_output({"gdal_create", "-q",
+               "-of",         "GTiff",
+               "-outsize",    columns,
+               rows,          "-bands",
+               "1",           "-ot",
+               "Float32",     "-a_srs",
+               "EPSG:25831",  "-a_ullr",
+               "500000",      "5900000",
+               "690000",      "5710000",
+               "-co",         "SPARSE_OK=TRUE",
+               "-co",         "COMPRESS=DEFLATE",
+               "-co",         "TILED=YES",
+               "-co",         "BLOCKXSIZE=4096",
+               "-co",         "BLOCKYSIZE=4096",
+               "-co",         "BIGTIFF=YES",
+               file.string()});
+  ASSERT_LT(fs::file_size(file), 1'000'000U);
+}
+
 TEST(BadRaster, LargerThanMemory) {
   const SmallFarm farm;
-  tool_output({"gdal_create",
-               "-q",
-               "-of",
-               "GTiff",
-               "-outsize",
-               "190000",
-               "190000",
-               "-bands",
-               "1",
-               "-ot",
-               "Float32",
-               "-a_srs",
-               "EPSG:25831",
-               "-a_ullr",
-               "500000",
-               "5900000",
-               "690000",
-               "5710000",
-               "-co",
-               "SPARSE_OK=TRUE",
-               "-co",
-               "COMPRESS=DEFLATE",
-               "-co",
-               "TILED=YES",
-               "-co",
-               "BLOCKXSIZE=4096",
-               "-co",
-               "BLOCKYSIZE=4096",
-               "-co",
-               "BIGTIFF=YES",
-               (farm / "ground.tif").string()});
-  ASSERT_LT(fs::file_size(farm / "ground.tif"), 1'000'000U);
+  make_boasting_raster(farm / "ground.tif", "190000", "190000");
   RunOptions options;
   options.most_memory_bytes = 8'000'000'000;  // so that the test does not depend on the machine
   for (const std::vector<std::string>& command :
@@ -234,35 +223,10 @@ TEST(BadRaster, LargerThanMemory) {
   EXPECT_FALSE(fs::exists(farm / "run"));
 }
 
-// A sixth of a million by a million cells is beyond belief, whatever the memory.
+// Beyond belief, whatever the memory.
 TEST(BadRaster, SizeBeyondBelief) {
   const SmallFarm farm;
-  tool_output({"gdal_create",
-               "-q",
-               "-of",
-               "GTiff",
-               "-outsize",
-               "1000000",
-               "160000",
-               "-bands",
-               "1",
-               "-ot",
-               "Float32",
-               "-a_srs",
-               "EPSG:25831",
-               "-co",
-               "SPARSE_OK=TRUE",
-               "-co",
-               "COMPRESS=DEFLATE",
-               "-co",
-               "TILED=YES",
-               "-co",
-               "BLOCKXSIZE=4096",
-               "-co",
-               "BLOCKYSIZE=4096",
-               "-co",
-               "BIGTIFF=YES",
-               (farm / "ground.tif").string()});
+  make_boasting_raster(farm / "ground.tif", "1000000", "160000");
   expect_all_refuse(
       farm, 3, {"ground.tif (ground): the raster's size is not believable", "1000000 columns", "cut out"});
 }

@@ -100,5 +100,15 @@ TEST(CommandLine, ResultsThatCannotBePrintedAreAnError) {
   }
 }
 
+// Progress that nobody can read does not end a run, and a message that nobody can read leaves its status.
+TEST(CommandLine, AFullStandardErrorChangesNothing) {
+  const SmallFarm farm;
+  RunOptions options;
+  options.errors_to = "/dev/full";
+  EXPECT_EQ(farm.map({}, options).status, 0);
+  expect_whole_run(farm / "run");
+  EXPECT_EQ(farm.run({"vet", "nothing.toml"}, options).status, 2);
+}
+
 }  // namespace
 }  // namespace sunfall::test

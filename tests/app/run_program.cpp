@@ -56,8 +56,9 @@ RunningProgram::RunningProgram(const std::vector<std::string>& words, const RunO
   if (process_ > 0) return;
   if (!options.folder.empty() && chdir(options.folder.c_str()) != 0) _exit(126);
   const int out = options.output_to.empty() ? out_ : open(options.output_to.c_str(), O_WRONLY);
+  const int err = options.errors_to.empty() ? err_ : open(options.errors_to.c_str(), O_WRONLY);
   const int in = open("/dev/null", O_RDONLY);
-  if (dup2(in, 0) < 0 || dup2(out, 1) < 0 || dup2(err_, 2) < 0) _exit(126);
+  if (dup2(in, 0) < 0 || dup2(out, 1) < 0 || dup2(err, 2) < 0) _exit(126);
   limit(RLIMIT_FSIZE, options.largest_file_bytes);
   limit(RLIMIT_AS, options.most_memory_bytes);
   execvp(arguments[0], arguments.data());

@@ -16,6 +16,7 @@ struct RunOptions {
   std::filesystem::path folder;                     // where it is started; empty: here
   std::optional<std::uint64_t> largest_file_bytes;  // ulimit -f
   std::optional<std::uint64_t> most_memory_bytes;   // ulimit -v
+  std::filesystem::path errors_to;                  // standard error goes there instead of Outcome::err
   std::filesystem::path output_to;                  // standard output goes there instead of Outcome::out
   double patience_s = 180.0;                        // the machine may be busy; a run that takes longer hangs
 };
