@@ -4,51 +4,11 @@
 #include <cmath>
 
 #include "shade/horizon_kernel.h"
+#include "shade/level_cells.h"
 #include "sunfall/error.h"
 
 namespace sunfall {
 namespace {
-
-int floor_div(int a, int b) { return a >= 0 ? a / b : -((-a + b - 1) / b); }
-int ceil_div(int a, int b) { return -floor_div(-a, b); }
-
-// The cells of a level that cover a rectangle of map cells.
-CellWindow covering(const CellWindow& map, int level) {
-  const int size = 1 << level;
-  CellWindow out;
-  out.column = floor_div(map.column, size);
-  out.row = floor_div(map.row, size);
-  out.columns = ceil_div(map.column + map.columns, size) - out.column;
-  out.rows = ceil_div(map.row + map.rows, size) - out.row;
-  return out;
-}
-
-CellWindow joined(const CellWindow& a, const CellWindow& b) {
-  const int west = std::min(a.column, b.column), north = std::min(a.row, b.row);
-  const int east = std::max(a.column + a.columns, b.column + b.columns);
-  const int south = std::max(a.row + a.rows, b.row + b.rows);
-  return {west, north, east - west, south - north};
-}
-
-CellWindow grown(const CellWindow& window, int margin) {
-  return {window.column - margin, window.row - margin, window.columns + 2 * margin, window.rows + 2 * margin};
-}
-
-// Halves a grid, keeping the highest of the (up to four) cells below each.
-std::vector<float> halved(const std::vector<float>& fine, int columns, int rows, int first_column,
-                          int first_row, const CellWindow& coarse) {
-  std::vector<float> out(static_cast<std::size_t>(coarse.columns) * coarse.rows, kNothing);
-  for (int row = 0; row < rows; ++row) {
-    const int to_row = floor_div(first_row + row, 2) - coarse.row;
-    const float* from = fine.data() + static_cast<std::size_t>(row) * columns;
-    float* to = out.data() + static_cast<std::size_t>(to_row) * coarse.columns;
-    for (int column = 0; column < columns; ++column) {
-      float& cell = to[floor_div(first_column + column, 2) - coarse.column];
-      cell = std::max(cell, from[column]);
-    }
-  }
-  return out;
-}
 
 // Fills gaps from the nearest known value of the same row, else of the row before; a grid with no
 // value at all becomes level 0. Only far horizons beside gaps ever see these numbers.
@@ -89,7 +49,13 @@ Terrain::Terrain(Inputs inputs, Progress& progress)
   if (inputs_.surface) require_same_grid(*inputs_.surface, inputs_.ground);
   read_all(progress);
   known_box_ = {0, 0, frame_.columns, frame_.rows};
-  if (inputs_.far_ground) add_far_ground();
+  if (inputs_.far_ground) {
+    far_.emplace(*inputs_.far_ground, frame_, inputs_.reach_m);
+    const int columns = frame_.columns, rows = frame_.rows;
+    far_->join({ground({0, 0, columns, 1}), ground({0, rows - 1, columns, 1}), ground({0, 0, 1, rows}),
+                ground({columns - 1, 0, 1, rows})});
+    known_box_ = joined(known_box_, far_->box());
+  }
   const int farthest = std::max(known_box_.columns, known_box_.rows);
   while ((kFullReach << top_level_) < farthest) ++top_level_;
 }
@@ -119,7 +85,7 @@ void Terrain::read_all(Progress& progress) {
       highest_m_ = std::max(highest_m_, height);
     }
     const CellWindow coarse = covering(window, 1);
-    const std::vector<float> half = halved(strip, window.columns, window.rows, 0, row, coarse);
+    const std::vector<float> half = halved(strip, window, coarse);
     std::copy(half.begin(), half.end(),
               level.heights.begin() + static_cast<std::ptrdiff_t>(coarse.row) * level.columns);
     progress.advance("reading the ground", double(row + window.rows) / frame_.rows);
@@ -134,49 +100,8 @@ void Terrain::read_all(Progress& progress) {
     const Level& fine = levels_.back();
     const CellWindow coarse = covering({0, 0, fine.columns, fine.rows}, 1);
     levels_.push_back(
-        {coarse.columns, coarse.rows, halved(fine.heights, fine.columns, fine.rows, 0, 0, coarse)});
+        {coarse.columns, coarse.rows, halved(fine.heights, {0, 0, fine.columns, fine.rows}, coarse)});
   }
-}
-
-// Far ground is resampled once to the level whose cells are nearest to its own size.
-void Terrain::add_far_ground() {
-  const RasterSource source = RasterSource::open(*inputs_.far_ground, "far_ground");
-  const MapBox box = extent_in(*inputs_.far_ground, "far_ground", frame_);
-  const double reach = inputs_.reach_m;
-  const double west = std::max(box.west, frame_.west - reach);
-  const double east = std::min(box.east, frame_.west + frame_.columns * frame_.cell_m + reach);
-  const double north = std::min(box.north, frame_.north + reach);
-  const double south = std::max(box.south, frame_.north - frame_.rows * frame_.cell_m - reach);
-  if (east <= west || north <= south) {
-    throw Error(ErrorKind::data, {"far_ground lies away from the ground that it should surround",
-                                  inputs_.far_ground->string(), "", "Give terrain around the plot"});
-  }
-  far_level_ = std::max(1, static_cast<int>(std::lround(std::log2(source.frame().cell_m / frame_.cell_m))));
-  const double size = frame_.cell_m * std::exp2(far_level_);
-  far_window_.column = static_cast<int>(std::floor((west - frame_.west) / size));
-  far_window_.row = static_cast<int>(std::floor((frame_.north - north) / size));
-  far_window_.columns = static_cast<int>(std::ceil((east - frame_.west) / size)) - far_window_.column;
-  far_window_.rows = static_cast<int>(std::ceil((frame_.north - south) / size)) - far_window_.row;
-  GridFrame target = frame_;
-  target.columns = far_window_.columns;
-  target.rows = far_window_.rows;
-  target.cell_m = size;
-  target.west = frame_.west + far_window_.column * size;
-  target.north = frame_.north - far_window_.row * size;
-  Grid<float> grid = resample(*inputs_.far_ground, "far_ground", target);
-  for (float& height : grid.values()) height = std::isnan(height) ? kNothing : height;
-  far_.push_back({target.columns, target.rows, std::move(grid.values())});
-  far_windows_.push_back(far_window_);
-  while (far_.back().columns > 2 || far_.back().rows > 2) {
-    const CellWindow fine = far_windows_.back();
-    const CellWindow coarse = covering(fine, 1);
-    far_.push_back({coarse.columns, coarse.rows,
-                    halved(far_.back().heights, fine.columns, fine.rows, fine.column, fine.row, coarse)});
-    far_windows_.push_back(coarse);
-  }
-  const int cells = 1 << far_level_;
-  known_box_ = joined(known_box_, {far_window_.column * cells, far_window_.row * cells,
-                                   far_window_.columns * cells, far_window_.rows * cells});
 }
 
 void Terrain::hiding_heights(const CellWindow& window, float* out) const {
@@ -197,30 +122,6 @@ void Terrain::hiding_heights(const CellWindow& window, float* out) const {
   }
 }
 
-// Far ground under a cell of any level: bilinear below its own level, the highest above.
-float Terrain::far_height(int level, int column, int row) const {
-  if (far_.empty()) return kNothing;
-  if (level >= far_level_) {
-    const std::size_t n = std::min<std::size_t>(level - far_level_, far_.size() - 1);
-    const int extra = level - far_level_ - static_cast<int>(n);
-    const CellWindow& window = far_windows_[n];
-    const int c = column * (1 << extra) - window.column, r = row * (1 << extra) - window.row;
-    if (c < 0 || r < 0 || c >= window.columns || r >= window.rows) return kNothing;
-    return far_[n].heights[static_cast<std::size_t>(r) * window.columns + c];
-  }
-  const double scale = std::exp2(level - far_level_);
-  const double x = (column + 0.5) * scale - 0.5 - far_window_.column;
-  const double y = (row + 0.5) * scale - 0.5 - far_window_.row;
-  const int c = static_cast<int>(std::floor(x)), r = static_cast<int>(std::floor(y));
-  if (c < 0 || r < 0 || c + 1 >= far_window_.columns || r + 1 >= far_window_.rows) return kNothing;
-  const float* h = far_[0].heights.data() + static_cast<std::size_t>(r) * far_window_.columns + c;
-  const float fx = static_cast<float>(x - c), fy = static_cast<float>(y - r);
-  const float* below = h + far_window_.columns;
-  const bool known = h[0] != kNothing && h[1] != kNothing && below[0] != kNothing && below[1] != kNothing;
-  if (!known) return kNothing;
-  return (h[0] * (1 - fx) + h[1] * fx) * (1 - fy) + (below[0] * (1 - fx) + below[1] * fx) * fy;
-}
-
 LevelGrid Terrain::level_grid(int level, const CellWindow& window) const {
   LevelGrid out{level, window, std::vector<float>(static_cast<std::size_t>(window.columns) * window.rows)};
   if (level == 0) {
@@ -237,11 +138,11 @@ LevelGrid Terrain::level_grid(int level, const CellWindow& window) const {
       }
     }
   }
-  if (far_.empty()) return out;
+  if (!far_) return out;
   for (int row = 0; row < window.rows; ++row) {
     for (int column = 0; column < window.columns; ++column) {
       float& height = out.heights[static_cast<std::size_t>(row) * window.columns + column];
-      if (height == kNothing) height = far_height(level, window.column + column, window.row + row);
+      if (height == kNothing) height = far_->height(level, window.column + column, window.row + row);
     }
   }
   return out;

@@ -11,6 +11,7 @@
 #include <vector>
 
 #include "geo/raster_source.h"
+#include "shade/far_ground.h"
 #include "sunfall/grid.h"
 #include "sunfall/progress.h"
 
@@ -67,19 +68,14 @@ class Terrain {
     std::vector<float> heights;
   };
   void read_all(Progress& progress);
-  void add_far_ground();
   void hiding_heights(const CellWindow& window, float* out) const;
-  float far_height(int level, int column, int row) const;
   CellWindow box_at(int level) const;
 
   Inputs inputs_;
   GridFrame frame_;
   mutable std::mutex reading_;
   std::vector<Level> levels_;  // levels_[n] is level n + 1 of the map itself
-  int far_level_ = 0;          // first level of the far grids, 0 when there are none
-  CellWindow far_window_;      // of the first far grid, in its level's cells
-  std::vector<Level> far_;     // far_[n] is level far_level_ + n; windows halve with each
-  std::vector<CellWindow> far_windows_;
+  std::optional<FarGround> far_;
   int top_level_ = 0;
   CellWindow known_box_;
   double valid_fraction_ = 0.0;
