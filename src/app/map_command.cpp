@@ -1,10 +1,12 @@
 // sunfall map PLAN [-o DIR]
 
 #include <fmt/format.h>
+#include <tbb/global_control.h>
 
 #include <cstdio>
 #include <memory>
 #include <nlohmann/json.hpp>
+#include <optional>
 
 #include "app/command_line.h"
 #include "app/former_run.h"
@@ -40,6 +42,11 @@ void run_map(const MapCommand& command) {
   const DomeLight light = dome_light_of(plan, site);
   MapOptions options;
   options.jobs = command.common.jobs;
+  // Left to itself, TBB keeps to the number of cores, and says so on standard error.
+  std::optional<tbb::global_control> workers;
+  if (options.jobs > 0) {
+    workers.emplace(tbb::global_control::max_allowed_parallelism, static_cast<std::size_t>(options.jobs));
+  }
   const MapResult maps =
       make_maps(plan, light, provenance_of(plan, site), folder.staging(), options, progress);
   write_run(plan, site, maps, plots, folder.staging(), progress);

@@ -53,8 +53,9 @@ void TerminalProgress::draw_bar(double done) {
       done > 0.02 && done < 1.0 ? duration_text(passed / done * (1.0 - done)) + " left" : "";
   const std::string bar(static_cast<std::size_t>(percent) / 4, '#');
   tell(fmt::format("\r{:<22} [{:<25}] {:3} % {:<14}", stage_, bar, percent, left));
+  line_open_ = done < 1.0;
+  if (!line_open_) tell("\n");  // what is printed next begins on a line of its own
   std::fflush(stderr);
-  line_open_ = true;
 }
 
 void TerminalProgress::write_line(double done) {
