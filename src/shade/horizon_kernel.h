@@ -54,9 +54,12 @@ struct SweepJob {
   int receiver_stride = 0;
   int tile_rows = 0;
   int tile_columns = 0;
-  float tangent_per_slope = 1.0F;  // from metres per row to tangent of elevation
-  float bend = 0.0F;               // the Earth's curve: metres of drop per row²
-  float* far = nullptr;            // out: [node row][line], tangents ≥ 0
+  float row_m = 1.0F;  // metres along the ray per row
+  float bend = 0.0F;   // the Earth's curve: metres of drop per row²
+  // out: [node row][line], the point that makes the far horizon there; its height is kNothing where
+  // there is none. Heights are less the Earth's curve, as in the rows.
+  float* far_height = nullptr;
+  float* far_u = nullptr;
   int far_stride = 0;
   SweepScratch scratch;  // room for (row_count / kRowsPerNode + 2) nodes of one block
 };

@@ -70,8 +70,7 @@ inline void walk_all(Walk (&walks)[kParts], const SweepScratch& scratch) {
 class BlockSweep {
  public:
   BlockSweep(const SweepJob& job, int block)
-      : job_(job), first_line_(job.first_line + block * kLinesPerBlock) {
-    far_ = job.far + block * kLinesPerBlock;
+      : job_(job), block_(block), first_line_(job.first_line + block * kLinesPerBlock) {
     for (int part = 0; part < kParts; ++part) {
       height_[part] = parent_height_[part] = Lanes::set(kNothing);
       code_[part] = parent_code_[part] = Lanes::set(packed(-5.0e5F, 0));
@@ -147,7 +146,7 @@ class BlockSweep {
     for (int i = 0; i < kRowsPerNode; ++i) {
       Float z[kParts];
       sample(rows[i], z);
-      const Float handicap = Lanes::set(kGroupTangent * (nearest - rows[i].u) / job_.tangent_per_slope);
+      const Float handicap = Lanes::set(kGroupTangent * (nearest - rows[i].u) * job_.row_m);
       for (int part = 0; part < kParts; ++part) {
         Walk& walk = walks[part];
         const Float merit = Lanes::sub(z[part], handicap);
@@ -192,14 +191,10 @@ class BlockSweep {
       aim(walks[part], part);
     }
     walk_all(walks, job_.scratch);
-    // In the bent heights a slope is short of the true one by 2·bend·u.
-    const Float unbend = Lanes::set(2.0F * job_.bend * static_cast<float>(u));
     for (int part = 0; part < kParts; ++part) {
-      const Float rise = Lanes::sub(walks[part].at_height, walks[part].eye_height);
-      const Float slope = Lanes::sub(Lanes::div(rise, walks[part].at_run), unbend);
-      const Float tangent = Lanes::mul(slope, Lanes::set(job_.tangent_per_slope));
-      Lanes::store(far_ + node_row * job_.far_stride + part * Lanes::kWidth,
-                   Lanes::max(tangent, Lanes::set(0.0F)));
+      const int at = node_row * job_.far_stride + block_ * kLinesPerBlock + part * Lanes::kWidth;
+      Lanes::store(job_.far_height + at, walks[part].at_height);
+      Lanes::store(job_.far_u + at, u_of(walks[part].at_code));
     }
   }
 
@@ -227,8 +222,8 @@ class BlockSweep {
   }
 
   const SweepJob& job_;
+  int block_;
   int first_line_;
-  float* far_;
   // The newest node of the hull.
   Float height_[kParts];
   Int code_[kParts];

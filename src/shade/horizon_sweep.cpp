@@ -184,16 +184,24 @@ void HorizonSweep::look_near(GridAzimuth azimuth) {
   }
 }
 
+// Metres that the level plane rises above the Earth's curve per row².
+double HorizonSweep::bend_of(const Direction& direction) const {
+  const double row_m = options_.cell_m * direction.row_length;
+  return row_m * row_m * (1.0 - options_.refraction) / (2.0 * options_.earth_radius_m);
+}
+
 void HorizonSweep::sweep_far(const March& m, const Direction& direction, int first_line, int blocks) {
   const double step_m = options_.cell_m * direction.row_length;
-  const double bend = step_m * step_m * (1.0 - options_.refraction) / (2.0 * options_.earth_radius_m);
+  const double bend = bend_of(direction);
   std::vector<MarchRow> rows = m.march_rows;
   for (MarchRow& row : rows) row.sink = static_cast<float>(bend * row.u * row.u);
   const std::size_t nodes = rows.size() / kRowsPerNode + 2;
   parent_height_.resize(nodes * kLinesPerBlock);
   parent_code_.resize(nodes * kLinesPerBlock);
   far_stride_ = blocks * kLinesPerBlock;
-  far_.assign(static_cast<std::size_t>(node_rows(m.rows)) * far_stride_, 0.0F);
+  const std::size_t points = static_cast<std::size_t>(node_rows(m.rows)) * far_stride_;
+  far_height_.assign(points, kNothing);
+  far_u_.assign(points, -1.0e5F);
 
   SweepJob job;
   job.rows = rows.data();
@@ -207,9 +215,10 @@ void HorizonSweep::sweep_far(const March& m, const Direction& direction, int fir
   job.receiver_stride = m.receiver_stride;
   job.tile_rows = m.rows;
   job.tile_columns = m.width;
-  job.tangent_per_slope = static_cast<float>(1.0 / step_m);
+  job.row_m = static_cast<float>(step_m);
   job.bend = static_cast<float>(bend);
-  job.far = far_.data();
+  job.far_height = far_height_.data();
+  job.far_u = far_u_.data();
   job.far_stride = far_stride_;
   job.scratch = {parent_height_.data(), parent_code_.data()};
   kernel_(job);
@@ -224,6 +233,7 @@ void HorizonSweep::look_far(GridAzimuth azimuth, std::uint16_t* steps) {
       static_cast<int>(std::ceil(static_cast<float>(m.width) + std::max(0.0F, -direction.lean * last_u))) + 1;
   const int blocks = (last_line - first_line + 1 + kLinesPerBlock) / kLinesPerBlock;
   sweep_far(m, direction, first_line, blocks);
+  const double bend = bend_of(direction);
   std::vector<float> near(static_cast<std::size_t>(near_stride_));
   std::vector<NearRow> rows;
   for (int u = 0; u < m.rows; ++u) {
@@ -234,13 +244,19 @@ void HorizonSweep::look_far(GridAzimuth azimuth, std::uint16_t* steps) {
     FarRead read;
     const int node = u / kNodeStride;
     const int next = std::min(node + 1, node_rows(m.rows) - 1);
-    read.weight = static_cast<float>(u % kNodeStride) / kNodeStride;
-    // A cell reads its own line, at both node rows: the same things stand along it.
     const float line = -direction.lean * static_cast<float>(u) - static_cast<float>(first_line);
     const float whole = std::floor(line);
+    const auto points = [&](int node_row) {
+      const std::size_t at = static_cast<std::size_t>(node_row) * far_stride_ + static_cast<int>(whole);
+      return FarPoints{far_height_.data() + at, far_u_.data() + at};
+    };
+    read.before = points(node);
+    read.after = points(next);
+    read.u = static_cast<float>(u);
     read.fraction = line - whole;
-    read.before = far_.data() + static_cast<std::size_t>(node) * far_stride_ + static_cast<int>(whole);
-    read.after = far_.data() + static_cast<std::size_t>(next) * far_stride_ + static_cast<int>(whole);
+    read.eyes = eyes(m, u);
+    read.eye_sink = static_cast<float>(bend * u * u);
+    read.unbend = static_cast<float>(2.0 * bend * u);
     read.near = near.data();
     read.tangent_per_slope = static_cast<float>(1.0 / (options_.cell_m * direction.row_length));
     read.width = m.width;

@@ -4,7 +4,7 @@
 // Near rows (kNearRows) are looked at one by one along the direction from each cell's own centre,
 // the nearest also halfway, for a surface that is linear between cell centres. Beyond them the
 // horizon comes from parallel lines that each keep a hull (horizon_kernel.h), read between the two
-// lines beside a cell and between two node rows.
+// lines beside a cell, from the cell's own eye to the points found at the node rows around it.
 
 #include <array>
 #include <cstdint>
@@ -72,6 +72,7 @@ class HorizonSweep {
   static void append_near_rows(const March& m, const Direction& direction, int u, int first, int last,
                                std::vector<NearRow>& out);
   static void append_half_rows(const March& m, const Direction& direction, int u, std::vector<NearRow>& out);
+  double bend_of(const Direction& direction) const;
   void sweep_far(const March& m, const Direction& direction, int first_line, int blocks);
 
   const TerrainTile& tile_;
@@ -80,7 +81,7 @@ class HorizonSweep {
   std::vector<LevelGrid> turned_;  // levels stored column by column
   int near_stride_ = 0;
   std::vector<float> near_;  // slopes to the nearest rows, u by v
-  std::vector<float> far_;
+  std::vector<float> far_height_, far_u_;
   int far_stride_ = 0;
   std::vector<float> parent_height_;
   std::vector<std::int32_t> parent_code_;

@@ -54,16 +54,24 @@ SUNFALL_CLONES void look_along_near_rows(const NearLook& look) {
   }
 }
 
-// Between two node rows the cotangent is interpolated: it is what changes evenly as a cell moves
-// away from one obstacle. A node that sees nothing makes the far horizon open up to the next node;
-// what stands there is among the near rows.
+namespace {
+
+// The steeper of the sight lines to two points, metres per row.
+inline __attribute__((always_inline)) float steeper(const FarRead& read, int line, float eye) {
+  const float rise0 = read.before.height[line] - eye, run0 = read.u - read.before.u[line];
+  const float rise1 = read.after.height[line] - eye, run1 = read.u - read.after.u[line];
+  const bool first = rise0 * run1 > rise1 * run0;
+  return std::max((first ? rise0 : rise1) / (first ? run0 : run1), 0.0F);
+}
+
+}  // namespace
+
 SUNFALL_CLONES void combine_near_and_far(const FarRead& read) {
-  const float before_weight = 1.0F - read.weight;
   for (int v = 0; v < read.width; ++v) {
-    const float a = read.before[v] + read.fraction * (read.before[v + 1] - read.before[v]);
-    const float b = read.after[v] + read.fraction * (read.after[v + 1] - read.after[v]);
-    const float far = a * b / (before_weight * b + read.weight * a + 1e-12F);
-    read.steps[v] = horizon_step(std::max(read.near[v] * read.tangent_per_slope, far));
+    const float eye = read.eyes[v] - read.eye_sink;
+    const float left = steeper(read, v, eye), right = steeper(read, v + 1, eye);
+    const float far = left + read.fraction * (right - left) - read.unbend;
+    read.steps[v] = horizon_step(std::max(read.near[v], far) * read.tangent_per_slope);
   }
 }
 

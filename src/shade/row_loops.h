@@ -26,14 +26,23 @@ struct NearLook {
 };
 void look_along_near_rows(const NearLook& look);
 
-// A cell reads the lines beside it at the node rows before and after its own.
+// The points that make the far horizon at a node row, from the line left of v = 0 on.
+struct FarPoints {
+  const float* height = nullptr;
+  const float* u = nullptr;
+};
+// A cell tries the points found at the node rows before and after its own, on the lines beside it,
+// from its own eye.
 struct FarRead {
-  const float* before = nullptr;  // tangents at the node rows, at the line left of v = 0
-  const float* after = nullptr;
-  float fraction = 0.0F;           // how far v = 0 lies from that line towards the next
-  float weight = 0.0F;             // of the node row after
-  const float* near = nullptr;     // slopes
-  float tangent_per_slope = 1.0F;  // of `near`
+  FarPoints before;
+  FarPoints after;
+  float u = 0.0F;         // the cells' row
+  float fraction = 0.0F;  // how far v = 0 lies from the line on its left towards the next
+  const float* eyes = nullptr;
+  float eye_sink = 0.0F;        // the Earth's curve at the row, metres
+  float unbend = 0.0F;          // slope that bent heights are short of, metres per row
+  const float* near = nullptr;  // slopes to the near rows, metres per row
+  float tangent_per_slope = 1.0F;
   int width = 0;
   std::uint16_t* steps = nullptr;
 };

@@ -1,0 +1,42 @@
+// Every instruction set's kernel gives the same bits.
+
+#include <gtest/gtest.h>
+
+#include <cstdlib>
+
+#include "map/scene.h"
+#include "shade/horizon_sweep.h"
+#include "shade/rough_ground.h"
+
+namespace sunfall::testing {
+namespace {
+
+std::vector<std::uint16_t> steps_with(const TerrainTile& tile, const char* lanes, double azimuth_deg) {
+  setenv("SUNFALL_LANES", lanes, 1);
+  HorizonSweep sweep(tile, {});
+  unsetenv("SUNFALL_LANES");
+  std::vector<std::uint16_t> steps(tile.usable.size());
+  const GridAzimuth azimuth{Angle::degrees(azimuth_deg)};
+  sweep.look_near(azimuth);
+  sweep.look_far(azimuth, steps.data());
+  return steps;
+}
+
+TEST(Lanes, EveryInstructionSetGivesTheSameBits) {
+  SceneOptions options;
+  options.columns = 230;
+  options.rows = 190;
+  options.receiver_height_m = 0.5;
+  Scene scene([](double e, double n) { return rough_height(e, n); }, {}, options);
+  // A tile of odd sides, so that blocks and node rows end inside it.
+  const TerrainTile tile = scene.terrain().tile({31, 27, 117, 93});
+  for (const double azimuth : {3.0, 44.0, 46.0, 91.0, 137.0, 200.0, 268.0, 314.0}) {
+    const auto plain = steps_with(tile, "plain", azimuth);
+    EXPECT_EQ(plain, steps_with(tile, "avx2", azimuth)) << azimuth;
+    EXPECT_EQ(plain, steps_with(tile, "avx512", azimuth)) << azimuth;
+    EXPECT_GT(*std::max_element(plain.begin(), plain.end()), 0);
+  }
+}
+
+}  // namespace
+}  // namespace sunfall::testing
