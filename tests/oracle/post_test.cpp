@@ -55,9 +55,9 @@ double variation(const std::vector<double>& around) {
 
 // A line of the dome stands for the azimuths within half a line on either side. Over the width of the
 // post, lines that meet it are counted right to within one; the beam's tables spread the sun's path over
-// the lines beside it, which moves light by up to one line more. So the error stays below the light of
-// two lines from below the post's top. Near rows are looked along once for all lines of a sector; the
-// same is asked of them. Larger than that would be a spoke.
+// the lines beside it, which moves light by up to one line more: two lines of light from below the post's
+// top. More would be a spoke. (Horizons of neighbouring lines of the sweep are averaged besides; that
+// blurs the post, and must not take more room than the bound leaves.)
 double two_lines(const DomeLight& light, double radius_m, std::size_t month) {
   const double rise = kHeight_m - kReceiver_m;
   const double sine = rise / std::hypot(rise, radius_m - kHalfWidth_m);

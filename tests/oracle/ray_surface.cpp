@@ -11,7 +11,6 @@ namespace {
 
 constexpr int kMargin = 64;    // map cells around the map at full resolution
 constexpr int kFarLevel = 4;   // cells of 16 map cells beyond
-constexpr int kPacket = 16;    // rays that are traced together
 constexpr int kHalvings = 14;  // 90 degrees / 2^14 = 0.0055
 
 // The same bend as the sweep's: distance² · (1 - refraction) / (2 · radius).
@@ -43,6 +42,10 @@ float RayHorizon::at(double turn) const {
   const std::size_t second = first + 1 < elevation.size() ? first + 1 : 0;
   const auto part = static_cast<float>(place - std::floor(place));
   return elevation[first] + part * (elevation[second] - elevation[first]);
+}
+
+RayDirection RayDirection::of(double azimuth, double elevation) {
+  return {std::sin(azimuth), std::cos(azimuth), std::cos(elevation), std::sin(elevation)};
 }
 
 RaySurface::RaySurface(const Terrain& terrain, Diagonal diagonal)
@@ -118,58 +121,66 @@ void RaySurface::add(const Terrain& terrain, const LevelGrid& grid, const CellWi
   rtcReleaseGeometry(geometry);
 }
 
-RayHorizon RaySurface::horizon(CellIndex cell, double height_m, int azimuths) const {
+RayEye RaySurface::eye(CellIndex cell, double height_m) const {
   const double east = (cell.column + 0.5 - 0.5 * frame_.columns) * frame_.cell_m;
   const double north = (0.5 * frame_.rows - cell.row - 0.5) * frame_.cell_m;
-  const double up = height_m - kBend_per_m * (east * east + north * north);
+  return {east, north, height_m - kBend_per_m * (east * east + north * north)};
+}
+
+std::uint32_t RaySurface::hidden(const RayPacket& packet, std::uint32_t wanted) const {
+  RTCRay16 ray{};
+  alignas(64) int valid[kPacket];
+  for (int i = 0; i < kPacket; ++i) {
+    const RayEye& eye = packet.eyes[i];
+    const RayDirection& direction = packet.directions[i];
+    // Level at the receiver is tangent to the bent ground there.
+    const double lean = -2.0 * kBend_per_m * (eye.east * direction.to_east + eye.north * direction.to_north);
+    valid[i] = (wanted >> i & 1U) != 0 ? -1 : 0;
+    ray.org_x[i] = static_cast<float>(eye.east);
+    ray.org_y[i] = static_cast<float>(eye.north);
+    ray.org_z[i] = static_cast<float>(eye.up);
+    ray.dir_x[i] = static_cast<float>(direction.level * direction.to_east);
+    ray.dir_y[i] = static_cast<float>(direction.level * direction.to_north);
+    ray.dir_z[i] = static_cast<float>(direction.rise + direction.level * lean);
+    ray.tnear[i] = 0.0F;
+    ray.tfar[i] = 1.0e6F;
+    ray.mask[i] = ~0U;
+  }
+  RTCIntersectContext context;
+  rtcInitIntersectContext(&context);
+  context.flags = RTC_INTERSECT_CONTEXT_FLAG_COHERENT;
+  rtcOccluded16(valid, scene_, &context, &ray);
+  std::uint32_t hidden = 0;
+  for (int i = 0; i < kPacket; ++i) hidden |= static_cast<std::uint32_t>(ray.tfar[i] < 0.0F) << i;
+  return hidden & wanted;
+}
+
+RayHorizon RaySurface::horizon(CellIndex cell, double height_m, int azimuths) const {
+  RayPacket packet;
+  std::fill_n(packet.eyes, kPacket, eye(cell, height_m));
   RayHorizon out;
   out.elevation.resize(azimuths);
   for (int first = 0; first < azimuths; first += kPacket) {
     const int count = std::min(kPacket, azimuths - first);
-    alignas(64) int valid[kPacket];
+    std::uint32_t wanted = (1U << count) - 1U;
     double azimuth[kPacket], low[kPacket], high[kPacket];
     for (int i = 0; i < kPacket; ++i) {
-      valid[i] = i < count ? -1 : 0;
       azimuth[i] = 2.0 * std::numbers::pi * (first + i) / azimuths;
       low[i] = 0.0;
       high[i] = 0.5 * std::numbers::pi;
     }
-    bool level = true;  // the first look is level: most of open country ends there
-    for (int look = 0; look <= kHalvings; ++look, level = false) {
-      RTCRay16 ray{};
+    for (int look = 0; look <= kHalvings && wanted != 0; ++look) {
+      const bool level = look == 0;  // the first look is level: most of open country ends there
       double elevation[kPacket];
       for (int i = 0; i < kPacket; ++i) {
         elevation[i] = level ? 0.0 : 0.5 * (low[i] + high[i]);
-        const double to_east = std::sin(azimuth[i]), to_north = std::cos(azimuth[i]);
-        // Level at the receiver is tangent to the bent ground there.
-        const double lean = -2.0 * kBend_per_m * (east * to_east + north * to_north);
-        const double flat = std::cos(elevation[i]);
-        ray.org_x[i] = static_cast<float>(east);
-        ray.org_y[i] = static_cast<float>(north);
-        ray.org_z[i] = static_cast<float>(up);
-        ray.dir_x[i] = static_cast<float>(flat * to_east);
-        ray.dir_y[i] = static_cast<float>(flat * to_north);
-        ray.dir_z[i] = static_cast<float>(std::sin(elevation[i]) + flat * lean);
-        ray.tnear[i] = 0.0F;
-        ray.tfar[i] = 1.0e6F;
-        ray.mask[i] = ~0U;
+        packet.directions[i] = RayDirection::of(azimuth[i], elevation[i]);
       }
-      RTCIntersectContext context;
-      rtcInitIntersectContext(&context);
-      context.flags = RTC_INTERSECT_CONTEXT_FLAG_COHERENT;
-      rtcOccluded16(valid, scene_, &context, &ray);
-      bool any = false;
+      const std::uint32_t hidden_now = hidden(packet, wanted);
       for (int i = 0; i < count; ++i) {
-        if (valid[i] == 0) continue;
-        const bool hidden = ray.tfar[i] < 0.0F;
-        if (hidden)
-          low[i] = elevation[i];
-        else
-          high[i] = elevation[i];
-        if (level && !hidden) valid[i] = 0;
-        any = any || valid[i] != 0;
+        if ((wanted >> i & 1U) != 0) ((hidden_now >> i & 1U) != 0 ? low : high)[i] = elevation[i];
       }
-      if (!any) break;
+      if (level) wanted = hidden_now;
     }
     for (int i = 0; i < count; ++i) out.elevation[first + i] = static_cast<float>(0.5 * (low[i] + high[i]));
   }

@@ -4,6 +4,7 @@
 
 #include <embree3/rtcore.h>
 
+#include <cstdint>
 #include <vector>
 
 #include "shade/terrain.h"
@@ -23,6 +24,29 @@ struct RayHorizon {
   float at(double turn) const;
 };
 
+// A point above the middle of a cell, metres from the middle of the map; `up` is bent with the Earth.
+struct RayEye {
+  double east = 0.0;
+  double north = 0.0;
+  double up = 0.0;
+};
+
+// A direction from grid north and the level, radians, with its sines and cosines at hand.
+struct RayDirection {
+  double to_east = 0.0;  // on the ground: a unit vector
+  double to_north = 1.0;
+  double level = 1.0;  // cosine and sine of the elevation
+  double rise = 0.0;
+  static RayDirection of(double azimuth, double elevation);
+};
+
+// Rays that are traced together, which is fastest where they run alike.
+inline constexpr int kPacket = 16;
+struct RayPacket {
+  RayEye eyes[kPacket];
+  RayDirection directions[kPacket];
+};
+
 // Vertices stand at cell centres. Full resolution over the map and 64 cells around it; where the
 // terrain knows a far ground, cells of 2^4 map cells beyond.
 class RaySurface {
@@ -31,6 +55,11 @@ class RaySurface {
   ~RaySurface();
   RaySurface(const RaySurface&) = delete;
   RaySurface& operator=(const RaySurface&) = delete;
+
+  RayEye eye(CellIndex cell, double height_m) const;
+  // Which of the packet's rays meet something, a bit a ray; `wanted` tells which ones count. May be
+  // called from several threads.
+  std::uint32_t hidden(const RayPacket& packet, std::uint32_t wanted = 0xFFFFU) const;
 
   // From a point above the middle of a cell. Each horizon is found by halving between level and
   // zenith until 0.006 degrees are left. May be called from several threads.
