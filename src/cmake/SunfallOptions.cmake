@@ -28,6 +28,7 @@ if(SUNFALL_SANITIZE)
   target_compile_options(sunfall_options INTERFACE
     -fsanitize=${SUNFALL_SANITIZE} -fno-sanitize-recover=all -fno-omit-frame-pointer -Wno-maybe-uninitialized)
   target_link_options(sunfall_options INTERFACE -fsanitize=${SUNFALL_SANITIZE})
+  target_compile_definitions(sunfall_options INTERFACE SUNFALL_NO_CLONES)
 else()
   target_compile_options(sunfall_options INTERFACE
     $<$<NOT:$<CONFIG:Debug>>:-U_FORTIFY_SOURCE> $<$<NOT:$<CONFIG:Debug>>:-D_FORTIFY_SOURCE=2>)
