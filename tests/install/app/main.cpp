@@ -7,6 +7,5 @@ int main() {
   using namespace std::chrono_literals;
   const sunfall::Place place{sunfall::Angle::degrees(39.742476), sunfall::Angle::degrees(-105.1786), 1830.14};
   const sunfall::UtcTime time = std::chrono::sys_days{2003y / 10 / 17} + 19h + 30min + 30s;
-  std::printf("the sun stands %.2f degrees high\n",
-              sunfall::sun_position(time, place).elevation.degrees());
+  std::printf("the sun stands %.2f degrees high\n", sunfall::sun_position(time, place).elevation.degrees());
 }
