@@ -1,8 +1,8 @@
 #pragma once
 // The dome: the sky above a cell, cut into sectors of equal azimuth and bands of equal solid angle
 // (bands are uniform in the sine of elevation, so they are finest near the horizon, where shade
-// is decided). A sector is looked along by several lines, so that thin things far away cast fans
-// and not spokes; a band holds several steps, so that a horizon inside it counts in part.
+// is decided). A sector holds several lines, so that thin things far away cast fans and not spokes;
+// a band holds several steps, so that a horizon inside it counts in part.
 
 #include <string>
 #include <vector>
@@ -18,8 +18,11 @@ enum class SkyModel { clearness, isotropic, overcast };
 struct Dome {
   int sectors = 72;
   int bands = 30;
-  int lines_per_sector = 3;
+  int lines_per_sector = 6;
   int steps_per_band = 4;
+  // Horizons are looked for along as many directions in a sector as its low sun asks for: none stands
+  // for more than this part of any period's beam from below 30 degrees.
+  double beam_per_look = 0.015;
 
   static Dome of(DomeQuality quality);
   int lines() const { return sectors * lines_per_sector; }

@@ -113,7 +113,7 @@ void run_spot(const SpotCommand& command) {
   TerminalProgress progress(command.common.quiet || command.common.json);
   const Terrain terrain(open_terrain(plan.site), progress);
   const DomeLight light = dome_light_of(plan, site);
-  const Spot spot = look_at_spot(plan, site, terrain, light, point, {});
+  const Spot spot = look_at_spot(plan, terrain, light, point, {});
   const std::vector<SpotStep> steps = spot_day(plan, site, spot, day);
   const std::filesystem::path out =
       command.folder.empty() ? std::filesystem::path("outputs") / (plan.file.stem().string() + "-spot")

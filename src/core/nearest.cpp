@@ -17,8 +17,8 @@ std::size_t distance(const std::string& a, const std::string& b) {
     for (std::size_t j = 1; j <= b.size(); ++j) {
       const std::size_t replace = lower(a[i - 1]) == lower(b[j - 1]) ? 0 : 1;
       cost[i][j] = std::min({cost[i - 1][j] + 1, cost[i][j - 1] + 1, cost[i - 1][j - 1] + replace});
-      const bool swapped = i > 1 && j > 1 && lower(a[i - 1]) == lower(b[j - 2]) &&
-                           lower(a[i - 2]) == lower(b[j - 1]);
+      const bool swapped =
+          i > 1 && j > 1 && lower(a[i - 1]) == lower(b[j - 2]) && lower(a[i - 2]) == lower(b[j - 1]);
       if (swapped) cost[i][j] = std::min(cost[i][j], cost[i - 2][j - 2] + 1);
     }
   }

@@ -6,9 +6,9 @@ namespace sunfall {
 
 Dome Dome::of(DomeQuality quality) {
   switch (quality) {
-    case DomeQuality::draft: return {36, 15, 2, 8};
-    case DomeQuality::standard: return {72, 30, 3, 4};
-    case DomeQuality::fine: return {180, 60, 2, 4};
+    case DomeQuality::draft: return {36, 15, 4, 8, 0.03};
+    case DomeQuality::standard: return {72, 30, 6, 4, 0.015};
+    case DomeQuality::fine: return {180, 60, 4, 4, 0.005};
   }
   return {};
 }

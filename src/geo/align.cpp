@@ -89,6 +89,8 @@ MapBox extent_in(const std::filesystem::path& source, const std::string& role, c
     guard.fail(ErrorKind::data, "the raster's extent cannot be carried to the ground's map", raster.where(),
                "Project it to the CRS of ground with gdalwarp");
   }
+  const double area = (box.east - box.west) * (box.north - box.south);
+  box.cell_m = std::sqrt(area / (static_cast<double>(raster.columns()) * raster.rows()));
   return box;
 }
 

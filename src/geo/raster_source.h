@@ -41,12 +41,13 @@ void require_same_grid(const RasterSource& other, const RasterSource& reference)
 // `source` resampled bilinearly onto `frame`, reprojecting where the CRS differ; missing outside
 // the source. Deterministic: no approximate transformer, fixed warp scale.
 Grid<float> resample(const std::filesystem::path& source, const std::string& role, const GridFrame& frame);
-// The extent of a raster of any projected CRS, in the CRS of `frame` (west, south, east, north).
+// The extent of a raster of any CRS, degrees too, in the CRS of `frame`, and its mean cell size there.
 struct MapBox {
   double west = 0.0;
   double south = 0.0;
   double east = 0.0;
   double north = 0.0;
+  double cell_m = 0.0;
 };
 MapBox extent_in(const std::filesystem::path& source, const std::string& role, const GridFrame& frame);
 

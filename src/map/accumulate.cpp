@@ -15,7 +15,7 @@ namespace {
 
 // Cells in square blocks, so that steps stored column by column and sums stored row by row both
 // stay in cache.
-constexpr int kBlock = 16;
+constexpr int kBlock = 32;
 static_assert(kColumnBlock == 32);
 
 // Calls cell(sums of the cell, its place in the steps) for every cell.
@@ -78,9 +78,13 @@ __attribute__((target("avx512f,avx512bw"))) void accumulate_avx512(const Horizon
                                                                    std::uint32_t* sums) {
   for_each_cell(
       batch, sums, [&](std::uint32_t * cell, std::size_t place) __attribute__((target("avx512f,avx512bw"))) {
+        // Addresses first: the loads behind them then need not wait for one another.
+        const std::uint16_t* entries[kMostLooks];
+        const std::size_t looks = batch.steps.size();
+        for (std::size_t look = 0; look < looks; ++look) entries[look] = entry_of(batch, tables, look, place);
         __m512i low = _mm512_loadu_si512(cell), high = _mm512_loadu_si512(cell + 16);
-        for (std::size_t line = 0; line < batch.steps.size(); ++line) {
-          const __m256i* entry = reinterpret_cast<const __m256i*>(entry_of(batch, tables, line, place));
+        for (std::size_t look = 0; look < looks; ++look) {
+          const __m256i* entry = reinterpret_cast<const __m256i*>(entries[look]);
           low = _mm512_add_epi32(low, _mm512_cvtepu16_epi32(_mm256_loadu_si256(entry)));
           high = _mm512_add_epi32(high, _mm512_cvtepu16_epi32(_mm256_loadu_si256(entry + 1)));
         }

@@ -7,9 +7,12 @@
 
 namespace sunfall {
 
-// Horizon steps of a tile for some lines; `by_columns` says that cells are stored column by column.
+inline constexpr int kMostLooks = 16;
+
+// Horizon steps of a tile for up to kMostLooks looks; `by_columns` says that cells are stored column by
+// column.
 struct HorizonBatch {
-  std::span<const std::uint16_t* const> steps;  // per line, one step per cell
+  std::span<const std::uint16_t* const> steps;  // per look, one step per cell
   int rows = 0;
   int columns = 0;
   bool by_columns = false;

@@ -49,35 +49,39 @@ std::vector<Column> columns_of(const DomeLight& light) {
   return columns;
 }
 
-// The strongest share of any period's beam that comes from a sector.
-double beam_share(const DomeLight& light, int sector) {
+// The strongest share of any period's beam that comes from a sector below 30 degrees.
+double low_beam_share(const DomeLight& light, int sector) {
   const Dome& dome = light.dome;
   double most = 0.0;
   for (std::size_t p = 0; p < light.periods.size(); ++p) {
     double sum = 0.0;
-    for (int k = 0; k < dome.lines_per_sector; ++k) {
-      for (int step = 0; step < dome.steps(); ++step) {
-        sum += light.beam.level[light.index(sector * dome.lines_per_sector + k, step, p)];
-      }
+    for (int line = sector * dome.lines_per_sector; line < (sector + 1) * dome.lines_per_sector; ++line) {
+      for (int step = 0; step < dome.steps() / 2; ++step) sum += light.beam.level[light.index(line, step, p)];
     }
     if (light.beam.open[p] > 0.0) most = std::max(most, sum / light.beam.open[p]);
   }
   return most;
 }
 
+int looks_in_sector(double low_beam_share, const Dome& dome) {
+  const int lines = dome.lines_per_sector;
+  int looks = 1;
+  while (looks < lines && (lines % looks != 0 || looks * dome.beam_per_look < low_beam_share)) ++looks;
+  return std::min(looks, lines);
+}
+
 }  // namespace
 
 std::vector<Look> looks_of(const DomeLight& light) {
   const Dome& dome = light.dome;
-  const int lines = dome.lines_per_sector;
   std::vector<Look> looks;
   for (int sector = 0; sector < dome.sectors; ++sector) {
-    if (beam_share(light, sector) < 1e-3) {
-      looks.push_back({sector * lines, lines, {Angle::degrees(360.0 * (sector + 0.5) / dome.sectors)}});
-      continue;
+    const int count = looks_in_sector(low_beam_share(light, sector), dome);
+    const int lines = dome.lines_per_sector / count;
+    for (int k = 0; k < count; ++k) {
+      const int first = sector * dome.lines_per_sector + k * lines;
+      looks.push_back({first, lines, {Angle::degrees(360.0 * (first + 0.5 * lines) / dome.lines())}});
     }
-    for (int line = sector * lines; line < (sector + 1) * lines; ++line)
-      looks.push_back({line, 1, dome.line_azimuth(line)});
   }
   return looks;
 }

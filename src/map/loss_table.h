@@ -17,8 +17,9 @@ struct Look {
   int lines = 1;
   Azimuth azimuth;
 };
-// One look a line where the sun comes by; one look for all lines of a sector that has no beam worth
-// the name (below a thousandth of every period's). Thin things cast their spokes in beam light.
+// Thin things far away cast their spokes in the beam of a low sun: a sector gets so many looks (a
+// divisor of its lines) that none stands for more than Dome::beam_per_look of any period's beam from
+// below 30 degrees, and at least one.
 std::vector<Look> looks_of(const DomeLight& light);
 
 // Columns: the beam share of every period, then the sky share of every period, padded with zeros.

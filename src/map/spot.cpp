@@ -96,8 +96,8 @@ std::vector<float> open_parts(const std::vector<Angle>& horizon, const Dome& dom
 
 }  // namespace
 
-Spot look_at_spot(const Plan& plan, const Site& site, const Terrain& terrain, const DomeLight& light,
-                  MapPoint point, const MapOptions& options) {
+Spot look_at_spot(const Plan& plan, const Terrain& terrain, const DomeLight& light, MapPoint point,
+                  const MapOptions& options) {
   const GridFrame& frame = terrain.frame();
   Spot spot;
   spot.cell = cell_of(frame, point);

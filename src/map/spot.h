@@ -35,8 +35,8 @@ inline constexpr int kSpotAzimuths = 720;
 
 // The same tile as the map's is solved, so the numbers are the map's own. Throws Error(plan) for a
 // point off the map, on unknown ground, or under something solid.
-Spot look_at_spot(const Plan& plan, const Site& site, const Terrain& terrain, const DomeLight& light,
-                  MapPoint point, const MapOptions& options);
+Spot look_at_spot(const Plan& plan, const Terrain& terrain, const DomeLight& light, MapPoint point,
+                  const MapOptions& options);
 
 // Light of every step of a day of the series, under the spot's horizon.
 std::vector<SpotStep> spot_day(const Plan& plan, const Site& site, const Spot& spot,

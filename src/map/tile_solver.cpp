@@ -11,6 +11,7 @@ namespace {
 
 // Lines whose horizons are kept at a time: their tables should stay in the second cache.
 constexpr int kBatch = 12;
+static_assert(kBatch <= kMostLooks);
 
 // The near rows are looked along once for looks that lie within this of it and share its heading.
 constexpr double kNearTolerance_deg = 2.0;

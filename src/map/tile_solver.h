@@ -50,7 +50,8 @@ class TileSolver {
   GridAzimuth near_azimuth_for(std::size_t look, Angle convergence) const;
   // Calls take(first look, batch) with the horizons of several looks at a time.
   template <typename Take>
-  void batches(HorizonSweep& sweep, const CellWindow& window, Angle convergence, TileRoom& room, Take take) const;
+  void batches(HorizonSweep& sweep, const CellWindow& window, Angle convergence, TileRoom& room,
+               Take take) const;
 
   const Terrain& terrain_;
   std::vector<Look> looks_;

@@ -9,9 +9,13 @@
 #include "sunfall/error.h"
 
 namespace sunfall {
+namespace {
+
+constexpr double kMostCells = 16e6;
+
+}  // namespace
 
 FarGround::FarGround(const std::filesystem::path& file, const GridFrame& map, double reach_m) : map_(map) {
-  const RasterSource source = RasterSource::open(file, "far_ground");
   const MapBox box = extent_in(file, "far_ground", map);
   const double west = std::max(box.west, map.west - reach_m);
   const double east = std::min(box.east, map.west + map.columns * map.cell_m + reach_m);
@@ -21,7 +25,13 @@ FarGround::FarGround(const std::filesystem::path& file, const GridFrame& map, do
     throw Error(ErrorKind::data, {"far_ground lies away from the ground that it should surround",
                                   file.string(), "", "Give terrain around the plot"});
   }
-  first_level_ = std::max(1, static_cast<int>(std::lround(std::log2(source.frame().cell_m / map.cell_m))));
+  first_level_ = std::max(1, static_cast<int>(std::lround(std::log2(box.cell_m / map.cell_m))));
+  // Finer cells than these would take memory and show nothing more at their distance.
+  const auto cells = [&] {
+    const double per_cell = map.cell_m * std::exp2(first_level_);
+    return (east - west) / per_cell * ((north - south) / per_cell);
+  };
+  while (cells() > kMostCells) ++first_level_;
   const double size = map.cell_m * std::exp2(first_level_);
   CellWindow window;
   window.column = static_cast<int>(std::floor((west - map.west) / size));

@@ -158,7 +158,9 @@ TEST(SkyView, MoreObstaclesNeverMoreLight) {
   const TileShares a = first.solve(fewer.terrain().tile(window), Angle()),
                    b = second.solve(more.terrain().tile(window), Angle());
   for (std::size_t cell = 0; cell < a.usable.size(); ++cell) {
-    if (a.usable[cell] && b.usable[cell]) ASSERT_LE(b.of(cell)[kSkyColumn], a.of(cell)[kSkyColumn]);
+    if (a.usable[cell] && b.usable[cell]) {
+      ASSERT_LE(b.of(cell)[kSkyColumn], a.of(cell)[kSkyColumn]);
+    }
     ASSERT_LE(a.of(cell)[kSkyColumn], 1.0F);
   }
 }

@@ -1,6 +1,6 @@
 // A thin tall thing: a post 2 m wide and 15 m high on flat ground in cells of 1 m. Around it the map
 // must fall and rise with azimuth as the rays' does; a post seen from far away must not turn into
-// spokes, bright and dark by whether one of the dome's lines meets it.
+// spokes, bright and dark by whether one of the looks meets it.
 
 #include <fmt/format.h>
 #include <gtest/gtest.h>
@@ -11,6 +11,7 @@
 
 #include "geo/layer_writer.h"
 #include "light/series_checks.h"
+#include "map/loss_table.h"
 #include "map/scene.h"
 #include "oracle/comparison.h"
 
@@ -53,24 +54,28 @@ double variation(const std::vector<double>& around) {
   return sum;
 }
 
-// A line of the dome stands for the azimuths within half a line on either side. Over the width of the
-// post, lines that meet it are counted right to within one; the beam's tables spread the sun's path over
-// the lines beside it, which moves light by up to one line more: two lines of light from below the post's
-// top. More would be a spoke. (Horizons of neighbouring lines of the sweep are averaged besides; that
-// blurs the post, and must not take more room than the bound leaves.)
-double two_lines(const DomeLight& light, double radius_m, std::size_t month) {
+// A look stands for the azimuths of its lines. Over the width of the post, looks that meet it are
+// counted right to within one; the beam's tables spread the sun's path over the lines beside it, which
+// moves light by up to one look more: two looks of light from below the post's top. Far horizons are
+// read between two lines of the sweep a cell apart, which moves each edge of the post by up to half a
+// cell. More would be a spoke.
+double spoke_bound(const DomeLight& light, double radius_m, std::size_t month) {
   const double rise = kHeight_m - kReceiver_m;
   const double sine = rise / std::hypot(rise, radius_m - kHalfWidth_m);
   double most = 0.0;
-  for (int line = 0; line < light.dome.lines(); ++line) {
+  for (const Look& look : looks_of(light)) {
     double below = 0.0;
-    for (int step = 0; step <= static_cast<int>(sine * light.dome.steps()); ++step) {
-      const std::size_t at = light.index(line, step, month);
-      below += light.beam.level[at] + light.sky.level[at];
+    for (int line = look.first_line; line < look.first_line + look.lines; ++line) {
+      for (int step = 0; step <= static_cast<int>(sine * light.dome.steps()); ++step) {
+        const std::size_t at = light.index(line, step, month);
+        below += light.beam.level[at] + light.sky.level[at];
+      }
     }
-    most = std::max(most, below);
+    const double width = 2.0 * std::numbers::pi * look.lines / light.dome.lines();
+    const double cell = 1.0 / radius_m;
+    most = std::max(most, below * (2.0 + cell / width));
   }
-  return 2.0 * most / (light.beam.open[month] + light.sky.open[month]);
+  return most / (light.beam.open[month] + light.sky.open[month]);
 }
 
 class Post : public ::testing::Test {
@@ -105,7 +110,7 @@ TEST_F(Post, LeavesNoSpokes) {
         const std::vector<double> a = light_around(ours, light.open(), month);
         const std::vector<double> b = light_around(rays, light.open(), month);
         const double loss = 1.0 - *std::min_element(b.begin(), b.end());
-        const double bound = two_lines(tables, radius_m, month);
+        const double bound = spoke_bound(tables, radius_m, month);
         fmt::print(
             "  {:8} {:3.0f} m month {:2}: {}; deepest shade {:.3f} %, bound {:.3f} %, variation {:.3f} "
             "against {:.3f} %\n",

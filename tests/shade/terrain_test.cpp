@@ -4,6 +4,7 @@
 
 #include <cmath>
 
+#include "geo/geodesy.h"
 #include "map/scene.h"
 #include "map/sight.h"
 #include "shade/horizon_kernel.h"
@@ -95,6 +96,27 @@ TEST(Terrain, FarGroundMeetsTheMapWithoutAStep) {
   // Far ground all round: the horizon is covered.
   const TerrainTile tile = terrain.tile({0, 0, 100, 100});
   for (const float sight : tile_sight(tile, 1.0)) EXPECT_GT(sight, 0.99F);
+}
+
+// Far ground may come in degrees, as most elevation models do.
+TEST(Terrain, FarGroundInDegrees) {
+  SceneOptions near_options;
+  near_options.columns = near_options.rows = 60;
+  Scene scene([](double, double) { return 10.0; }, {}, near_options);
+  SceneOptions far_options;
+  far_options.columns = far_options.rows = 100;
+  far_options.epsg = 4326;
+  far_options.cell_m = 0.0005;  // degrees
+  const GeoPlace middle = geo_place(scene.terrain().frame(), scene.terrain().frame().middle());
+  far_options.west = middle.place.longitude.degrees() - 0.025;
+  far_options.north = middle.place.latitude.degrees() + 0.025;
+  const auto far_file = scene.folder() / "far.tif";
+  write_heights(
+      far_file, [](double, double) { return 12.0; }, far_options);
+  SilentProgress quiet;
+  Terrain terrain({RasterSource::open(scene.ground_file(), "ground"), {}, far_file, 0.5}, quiet);
+  const LevelGrid away = terrain.level_grid(6, {10, 0, 1, 1});  // some 700 m east
+  EXPECT_NEAR(away.heights[0], 12.0, 1e-3);
 }
 
 TEST(Sight, FallsTowardsTheEdgeAndBesideHoles) {
