@@ -193,7 +193,8 @@ bool run(const Extent& extent) {
   const WorkFolder folder;
   std::vector<int> sides = extent.sides;
   sides.insert(std::upper_bound(sides.begin(), sides.end(), extent.main_side), extent.main_side);
-  const std::vector<Country> countries = write_countries(folder.path(), sides);
+  const std::vector<Country> countries = countries_in(folder.path(), sides);
+  run_apart([&] { write_countries(countries); });
   const auto main_at = std::find(sides.begin(), sides.end(), extent.main_side) - sides.begin();
 
   print_times_head();

@@ -17,7 +17,33 @@ double seconds(const timeval& time) { return double(time.tv_sec) + 1e-6 * double
 
 constexpr double kKibibytesPerMebibyte = 1024.0;
 
+// Waits for a good end, and tells what it took.
+rusage wait_for(pid_t process, const std::string& name) {
+  int state = 0;
+  rusage used{};
+  if (wait4(process, &state, 0, &used) != process) throw std::runtime_error(name + " is lost");
+  if (!WIFEXITED(state) || WEXITSTATUS(state) != 0) throw std::runtime_error(name + " failed");
+  return used;
+}
+
 }  // namespace
+
+void run_apart(const std::function<void()>& work) {
+  std::fflush(nullptr);
+  const pid_t process = fork();
+  if (process < 0) throw std::runtime_error("no fork");
+  if (process > 0) {
+    wait_for(process, "the work apart");
+    return;
+  }
+  try {
+    work();
+    _exit(0);
+  } catch (const std::exception& fault) {
+    fmt::print(stderr, "{}\n", fault.what());
+    _exit(1);
+  }
+}
 
 ChildCost run_child(const std::vector<std::string>& words, const std::filesystem::path& output) {
   std::vector<char*> arguments;
@@ -33,13 +59,8 @@ ChildCost run_child(const std::vector<std::string>& words, const std::filesystem
   const int fault = posix_spawnp(&process, arguments[0], &streams, nullptr, arguments.data(), environ);
   posix_spawn_file_actions_destroy(&streams);
   if (fault != 0) throw std::runtime_error(fmt::format("{} cannot be started", words.front()));
-  int state = 0;
-  rusage used{};
-  if (wait4(process, &state, 0, &used) != process) throw std::runtime_error("a child is lost");
+  const rusage used = wait_for(process, words.front());
   const double wall_s = std::chrono::duration<double>(std::chrono::steady_clock::now() - begin).count();
-  if (!WIFEXITED(state) || WEXITSTATUS(state) != 0) {
-    throw std::runtime_error(fmt::format("{} {} failed", words.front(), words.size() > 1 ? words[1] : ""));
-  }
   return {{wall_s, seconds(used.ru_utime) + seconds(used.ru_stime)},
           double(used.ru_maxrss) / kKibibytesPerMebibyte};
 }

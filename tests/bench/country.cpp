@@ -164,21 +164,23 @@ void write_heights(const Country& country, const std::filesystem::path& file, bo
 
 }  // namespace
 
-std::vector<Country> write_countries(const std::filesystem::path& folder, const std::vector<int>& sides) {
-  start_geo();
+std::vector<Country> countries_in(const std::filesystem::path& folder, const std::vector<int>& sides) {
   std::vector<Country> countries;
-  for (const int side : sides) {
-    const Country country{side, folder / fmt::format("{}", side)};
+  for (const int side : sides) countries.push_back({side, folder / fmt::format("{}", side)});
+  return countries;
+}
+
+void write_countries(const std::vector<Country>& countries) {
+  start_geo();
+  for (const Country& country : countries) {
     std::filesystem::create_directories(country.folder);
     std::ofstream(country.plan()) << kPlan;
-    countries.push_back(country);
   }
   tbb::parallel_for(std::size_t{0}, 2 * countries.size(), [&](std::size_t i) {
     const Country& country = countries[i / 2];
     const bool surface = i % 2 == 1;
     write_heights(country, surface ? country.surface() : country.ground(), surface);
   });
-  return countries;
 }
 
 }  // namespace sunfall::bench

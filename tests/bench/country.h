@@ -17,7 +17,8 @@ struct Country {
   double cells() const { return double(side) * side; }
 };
 
-// Writes squares of these sides into folders of their own, in strips, so that this process stays small.
-std::vector<Country> write_countries(const std::filesystem::path& folder, const std::vector<int>& sides);
+// Squares of these sides, in folders of their own.
+std::vector<Country> countries_in(const std::filesystem::path& folder, const std::vector<int>& sides);
+void write_countries(const std::vector<Country>& countries);
 
 }  // namespace sunfall::bench

@@ -49,7 +49,7 @@ RayDirection RayDirection::of(double azimuth, double elevation) {
 }
 
 RaySurface::RaySurface(const Terrain& terrain, Diagonal diagonal)
-    : frame_(terrain.frame()), device_(rtcNewDevice("threads=1")), scene_(rtcNewScene(device_)) {
+    : frame_(terrain.frame()), device_(rtcNewDevice(nullptr)), scene_(rtcNewScene(device_)) {
   rtcSetSceneFlags(scene_, RTC_SCENE_FLAG_ROBUST);
   rtcSetSceneBuildQuality(scene_, RTC_BUILD_QUALITY_HIGH);
   const CellWindow map{0, 0, frame_.columns, frame_.rows};
