@@ -49,7 +49,7 @@ void run_map(const MapCommand& command) {
   }
   const MapResult maps =
       make_maps(plan, light, provenance_of(plan, site), folder.staging(), options, progress);
-  write_run(plan, site, maps, plots, folder.staging(), progress);
+  write_run(plan, site, maps, plots, folder.staging(), options.jobs, progress);
   folder.publish("summary.json", files_of_former_run(out));
   if (command.common.json) {
     const nlohmann::ordered_json line{{"folder", out.string()},

@@ -2,11 +2,12 @@
 
 #include <fmt/format.h>
 
-#include <chrono>
+#include <algorithm>
 #include <cmath>
 
 #include "core/fingerprint.h"
 #include "core/month_names.h"
+#include "core/parallel.h"
 #include "geo/layer_writer.h"
 #include "map/layers.h"
 #include "report/contact_sheet.h"
@@ -24,30 +25,46 @@ constexpr int kPreviewSide = 900;  // cells; more would not show in the pictures
 
 std::string layer_file(const Period& period) { return "dli-" + period.name + ".tif"; }
 
-// Statistics of every plot, from one layer after another: memory for one layer at a time.
-class PlotLight {
- public:
-  PlotLight(const std::vector<Plot>& plots, const GridFrame& frame)
-      : cells_(plots.empty() ? std::vector<std::vector<CellIndex>>{} : cells_of_plots(plots, frame)),
-        rows_(plots.size()) {
-    for (std::size_t i = 0; i < plots.size(); ++i)
-      rows_[i] = {plots[i].id, plots[i].crop, plots[i].area_m2, {}};
-  }
+// One layer of light read back: its numbers, its plots, its picture.
+struct LayerLight {
+  MapNumbers numbers;
+  std::vector<PlotStatistics> plots;
+  Grid<float> preview;
+};
 
-  void add_period(const Grid<float>& layer) {
-    for (std::size_t i = 0; i < rows_.size(); ++i) {
-      std::vector<float> values;
-      values.reserve(cells_[i].size());
-      for (const CellIndex& cell : cells_[i]) values.push_back(layer.at(cell.column, cell.row));
-      rows_[i].by_period.push_back(statistics(std::move(values)));
+using PlotCells = std::vector<std::vector<CellIndex>>;
+
+// Reads a layer in strips, so that memory does not follow the map. The cells of a plot are sorted by
+// row.
+LayerLight read_light(const std::filesystem::path& file, const GridFrame& frame, const PlotCells& cells) {
+  constexpr int kStrip = 512;
+  LayerLight light;
+  std::vector<std::vector<float>> values(cells.size());
+  std::vector<std::size_t> next(cells.size(), 0);
+  double sum = 0.0;
+  std::size_t count = 0;
+  for (int row = 0; row < frame.rows; row += kStrip) {
+    const Grid<float> strip = read_layer(file, {0, row, frame.columns, std::min(kStrip, frame.rows - row)});
+    for (const float value : strip.values()) {
+      if (std::isnan(value)) continue;
+      sum += value;
+      light.numbers.least = std::fmin(light.numbers.least, value);
+      light.numbers.most = std::fmax(light.numbers.most, value);
+      ++count;
+    }
+    for (std::size_t plot = 0; plot < cells.size(); ++plot) {
+      for (; next[plot] < cells[plot].size() && cells[plot][next[plot]].row < row + strip.rows();
+           ++next[plot]) {
+        const CellIndex cell = cells[plot][next[plot]];
+        values[plot].push_back(strip.at(cell.column, cell.row - row));
+      }
     }
   }
-  const std::vector<PlotRow>& rows() const { return rows_; }
-
- private:
-  std::vector<std::vector<CellIndex>> cells_;
-  std::vector<PlotRow> rows_;
-};
+  if (count > 0) light.numbers.mean = sum / double(count);
+  for (std::vector<float>& plot : values) light.plots.push_back(statistics(std::move(plot)));
+  light.preview = read_preview(file, kPreviewSide);
+  return light;
+}
 
 // An input's path as the plan writes it.
 std::string plan_path(const Plan& plan, const std::filesystem::path& file) {
@@ -67,10 +84,19 @@ MapContext context_of(const Plan& plan, const Site& site, const std::vector<Plot
   return context;
 }
 
-// The numbers come from the whole layer, the picture from a preview.
-MapPanel panel_of(const std::filesystem::path& file, const std::string& name, const Grid<float>& layer,
-                  double open_field) {
-  return {name, read_preview(file, kPreviewSide), numbers_of(layer, open_field)};
+MapPanel panel_of(const std::string& name, LayerLight light, double open_field) {
+  light.numbers.open_field = open_field;
+  return {name, std::move(light.preview), light.numbers};
+}
+
+std::vector<PlotRow> plot_rows(const std::vector<Plot>& plots, const std::vector<LayerLight>& periods) {
+  std::vector<PlotRow> rows;
+  for (std::size_t i = 0; i < plots.size(); ++i) {
+    PlotRow row{plots[i].id, plots[i].crop, plots[i].area_m2, {}};
+    for (const LayerLight& period : periods) row.by_period.push_back(period.plots[i]);
+    rows.push_back(std::move(row));
+  }
+  return rows;
 }
 
 std::vector<PlotColumn> plot_columns(const std::vector<PlotRow>& rows, const std::vector<Period>& periods) {
@@ -105,7 +131,7 @@ std::vector<Summary::Input> inputs_of(const Plan& plan) {
 }
 
 Summary summary_of(const Plan& plan, const Site& site, const MapResult& maps,
-                   const std::vector<PlotRow>& rows, const std::filesystem::path& folder) {
+                   const std::vector<PlotRow>& rows, const std::filesystem::path& folder, int jobs) {
   Summary summary;
   summary.plan = plan.name;
   summary.version = kVersion;
@@ -140,10 +166,12 @@ Summary summary_of(const Plan& plan, const Site& site, const MapResult& maps,
     plot.lowest_month = lowest_month(plot.dli_month_mean);
     summary.plots.push_back(std::move(plot));
   }
-  for (const MapLayer& layer : maps.layers) {
-    summary.layers.push_back(
-        {layer.file_name, layer.description, layer.unit, fingerprint(folder / layer.file_name)});
-  }
+  summary.layers.resize(maps.layers.size());
+  on_all_cores(jobs, maps.layers.size(), [&](std::size_t i) {
+    const MapLayer& layer = maps.layers[i];
+    summary.layers[i] = {layer.file_name, layer.description, layer.unit,
+                         fingerprint(folder / layer.file_name)};
+  });
   for (const auto& [stage, seconds] : maps.seconds) summary.timings_s.emplace_back(stage, seconds);
   summary.notes = site.notes;
   for (const std::string& choice : plan.defaults) summary.notes.push_back("Left open in the plan: " + choice);
@@ -166,30 +194,34 @@ std::vector<Plot> plots_of(const Plan& plan, const GridFrame& frame) {
 }
 
 void write_run(const Plan& plan, const Site& site, const MapResult& maps, const std::vector<Plot>& plots,
-               const std::filesystem::path& folder, Progress& progress) {
-  const auto begin = std::chrono::steady_clock::now();
-  const MapContext context = context_of(plan, site, plots);
-  PlotLight plot_light(plots, maps.frame);
-  const CellWindow whole{0, 0, maps.frame.columns, maps.frame.rows};
-  ContactSheet sheet{context, {}};
+               const std::filesystem::path& folder, int jobs, Progress& progress) {
+  const Stopwatch watch;
   const std::size_t periods = maps.periods.size();
-  for (std::size_t p = 0; p < periods; ++p) {
-    if (progress.stop_requested())
+  const PlotCells cells = plots.empty() ? PlotCells{} : cells_of_plots(plots, maps.frame);
+  std::vector<LayerLight> light(periods + 1);  // the year last
+  SharedProgress told(progress, "tables and pictures", periods + 2);
+  on_all_cores(jobs, light.size(), [&](std::size_t i) {
+    if (progress.stop_requested()) {
       throw Error(ErrorKind::interrupted,
                   {"stopped before the run was done", "", "", "Run the same command again"});
-    const std::filesystem::path file = folder / layer_file(maps.periods[p]);
-    const Grid<float> layer = read_layer(file, whole);
-    plot_light.add_period(layer);
-    if (p < 12)
-      sheet.months.push_back(panel_of(file, month_name(p), layer, maps.open.beam[p] + maps.open.sky[p]));
-    progress.advance("tables and pictures", double(p + 1) / double(periods + 2));
+    }
+    light[i] =
+        read_light(folder / (i < periods ? layer_file(maps.periods[i]) : "dli-year.tif"), maps.frame, cells);
+    told.one_done();
+  });
+  LayerLight year = std::move(light.back());
+  light.pop_back();
+  const std::vector<PlotRow> rows = plot_rows(plots, light);
+
+  const MapContext context = context_of(plan, site, plots);
+  ContactSheet sheet{context, {}};
+  for (std::size_t m = 0; m < 12; ++m) {
+    sheet.months.push_back(
+        panel_of(month_name(m), std::move(light[m]), maps.open.beam[m] + maps.open.sky[m]));
   }
   draw_contact_sheet(folder / "months.png", sheet);
-  const std::filesystem::path year = folder / "dli-year.tif";
-  const Grid<float> year_layer = read_layer(year, whole);
   draw_map(folder / "year.png",
-           {context, "Daily light, mean of the year", panel_of(year, "Year", year_layer, maps.open.year)});
-  progress.advance("tables and pictures", double(periods + 1) / double(periods + 2));
+           {context, "Daily light, mean of the year", panel_of("Year", std::move(year), maps.open.year)});
 
   RasterStyle style;
   style.scale = shared_scale(sheet.months);
@@ -197,14 +229,13 @@ void write_run(const Plan& plan, const Site& site, const MapResult& maps, const 
   if (!plots.empty()) {
     std::vector<std::string> names;
     for (const Period& period : maps.periods) names.push_back(period.name);
-    write_plots_csv(folder / "plots.csv", plot_light.rows(), names);
-    write_plots_gpkg(folder / "plots.gpkg", plots, plot_columns(plot_light.rows(), maps.periods), maps.frame);
+    write_plots_csv(folder / "plots.csv", rows, names);
+    write_plots_gpkg(folder / "plots.gpkg", plots, plot_columns(rows, maps.periods), maps.frame);
   }
-  Summary summary = summary_of(plan, site, maps, plot_light.rows(), folder);
-  summary.timings_s.emplace_back(
-      "tables and pictures", std::chrono::duration<double>(std::chrono::steady_clock::now() - begin).count());
+  Summary summary = summary_of(plan, site, maps, rows, folder, jobs);
+  summary.timings_s.emplace_back("tables and pictures", watch.seconds());
   write_summary(folder / "summary.json", summary);
-  progress.advance("tables and pictures", 1.0);
+  told.one_done();
 }
 
 }  // namespace sunfall
