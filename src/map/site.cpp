@@ -40,6 +40,12 @@ const char* sky_name(SkyModel sky) {
 
 }  // namespace
 
+std::string place_text(const Place& place) {
+  const double longitude = place.longitude.degrees(), latitude = place.latitude.degrees();
+  return fmt::format("{:.4f}° {}, {:.4f}° {}", std::abs(longitude), longitude < 0 ? "W" : "E",
+                     std::abs(latitude), latitude < 0 ? "S" : "N");
+}
+
 Site open_site(const Plan& plan) {
   Site site;
   const RasterSource ground = RasterSource::open(plan.site.ground, "ground");
@@ -49,9 +55,8 @@ Site open_site(const Plan& plan) {
   site.series =
       make_light(plan.light, site.middle.place, plan.site.clock, plan.light_options, plan.light_where);
   site.notes = site.series.notes;
-  site.notes.push_back(
-      fmt::format("The sun and the sky are those of the middle of the map ({:.4f}° N, {:.4f}° E).",
-                  site.middle.place.latitude.degrees(), site.middle.place.longitude.degrees()));
+  site.notes.push_back("The sun and the sky are those of the middle of the map (" +
+                       place_text(site.middle.place) + ").");
   if (!plan.site.far_ground) {
     site.notes.push_back(
         "No far_ground: hills and trees beyond the edge of the map are unknown; sight.tif tells where "

@@ -26,6 +26,9 @@ DomeLight dome_light_of(const Plan& plan, const Site& site);
 // Where a run came from, for every layer's metadata.
 std::map<std::string, std::string> provenance_of(const Plan& plan, const Site& site);
 
+// "5.6654° E, 51.9692° N"
+std::string place_text(const Place& place);
+
 // Photons 400-700 nm per joule of global radiation over the whole series, µmol J-1.
 double umol_per_joule(const LightSeries& series);
 

@@ -182,12 +182,6 @@ Summary summary_of(const Plan& plan, const Site& site, const MapResult& maps,
 
 }  // namespace
 
-std::string place_text(const Place& place) {
-  const double longitude = place.longitude.degrees(), latitude = place.latitude.degrees();
-  return fmt::format("{:.4f}° {}, {:.4f}° {}", std::abs(longitude), longitude < 0 ? "W" : "E",
-                     std::abs(latitude), latitude < 0 ? "S" : "N");
-}
-
 std::vector<Plot> plots_of(const Plan& plan, const GridFrame& frame) {
   if (!plan.plots) return {};
   return read_plots({plan.plots->file, plan.plots->layer, plan.plots->id, plan.plots->crop}, frame);

@@ -22,7 +22,4 @@ std::vector<Plot> plots_of(const Plan& plan, const GridFrame& frame);
 void write_run(const Plan& plan, const Site& site, const MapResult& maps, const std::vector<Plot>& plots,
                const std::filesystem::path& folder, int jobs, Progress& progress);
 
-// "5.6654° E, 51.9692° N"
-std::string place_text(const Place& place);
-
 }  // namespace sunfall
