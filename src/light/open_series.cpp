@@ -20,17 +20,25 @@ std::chrono::sys_days first_day(const LightSeries& series) {
 }  // namespace
 
 LightSeries open_series(const LightRequest& request) {
+  return open_series(request, std::chrono::year{request.options.year}, 1);
+}
+
+LightSeries open_series(const LightRequest& request, std::chrono::year first_year, int years) {
   LightSeries series;
   series.place = request.place;
-  series.first_year = std::chrono::year{request.options.year};
-  if (series.first_year < kFirstYear || series.first_year > kLastYear) {
+  series.first_year = first_year;
+  series.years = years;
+  const std::chrono::year end = first_year + std::chrono::years{years};
+  if (first_year < kFirstYear || end > kLastYear + std::chrono::years{1}) {
+    const int wrong = first_year < kFirstYear ? int{first_year} : int{end} - 1;
     throw Error(ErrorKind::plan, {.what = "the sun is not known well enough in that year",
                                   .where = request.where,
-                                  .found = fmt::format("{}", request.options.year),
+                                  .found = fmt::format("{}", wrong),
                                   .remedy = "give a year from 1950 to 2100"});
   }
-  series.utc_offset = request.clock.standard_offset(series.first_year);
-  const std::size_t days = series.first_year.is_leap() ? 366 : 365;
+  series.utc_offset = request.clock.standard_offset(first_year);
+  const auto days = static_cast<std::size_t>(
+      (std::chrono::sys_days{end / std::chrono::January / 1} - first_day(series)).count());
   const UtcTime begin = first_day(series) - series.utc_offset;
   series.sun = sun_track(begin, kLightStep, days * kStepsPerDay, request.place);
   series.steps.resize(series.sun.size());

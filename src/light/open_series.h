@@ -23,6 +23,8 @@ inline constexpr double kMegajoulePerWattStep = 600.0 * 1e-6;  // MJ m-2 of 1 W 
 // A series of one calendar year with the sun's track and dark steps. Throws Error(plan) for a year
 // outside 1950 to 2100, where the sun's position is good.
 LightSeries open_series(const LightRequest& request);
+// The same over several calendar years.
+LightSeries open_series(const LightRequest& request, std::chrono::year first_year, int years);
 
 // Months (0-11) of the series' days.
 std::vector<int> months_of_days(const LightSeries& series);
