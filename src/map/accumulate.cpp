@@ -3,6 +3,7 @@
 #include <algorithm>
 
 #include "core/clones.h"
+#include "core/instruction_set.h"
 #include "dome/horizon_steps.h"
 #include "map/loss_table.h"
 
@@ -99,10 +100,11 @@ __attribute__((target("avx512f,avx512bw"))) void accumulate_avx512(const Horizon
 void accumulate_level(const HorizonBatch& batch, std::span<const std::uint16_t* const> tables,
                       std::uint32_t* sums) {
 #if defined(__x86_64__)
-  if (__builtin_cpu_supports("avx512f") && __builtin_cpu_supports("avx512bw")) {
-    return accumulate_avx512(batch, tables.data(), sums);
+  switch (instruction_set()) {
+    case InstructionSet::avx512: return accumulate_avx512(batch, tables.data(), sums);
+    case InstructionSet::avx2: return accumulate_avx2(batch, tables.data(), sums);
+    case InstructionSet::plain: break;
   }
-  if (__builtin_cpu_supports("avx2")) return accumulate_avx2(batch, tables.data(), sums);
 #endif
   accumulate_plain(batch, tables.data(), sums);
 }

@@ -76,17 +76,17 @@ MapResult make_maps(const Plan& plan, const DomeLight& light,
   }
 
   Stopwatch solving;
-  std::vector<CellWindow> tiles = tiles_of(frame, options.tile_cells);
-  if (options.reverse_tiles) std::reverse(tiles.begin(), tiles.end());
+  const std::vector<CellWindow> tiles = tiles_of(frame, options.tile_cells);
   SharedProgress told(progress, "following the light", tiles.size());
   struct Sum {
     double sight = 0.0;
     std::size_t usable = 0;
   };
-  std::vector<Sum> sums(tiles.size());
+  std::vector<Sum> sums(tiles.size());  // by tile, so that totals add up in one order
   tbb::enumerable_thread_specific<TileRoom> rooms;
-  on_all_cores(options.jobs, tiles.size(), [&](std::size_t i) {
+  on_all_cores(options.jobs, tiles.size(), [&](std::size_t turn) {
     stop_if_asked(progress);
+    const std::size_t i = options.reverse_tiles ? tiles.size() - 1 - turn : turn;
     const CellWindow& window = tiles[i];
     const CellIndex middle{window.column + window.columns / 2, window.row + window.rows / 2};
     const Angle convergence = geo_place(frame, frame.centre(middle)).convergence;
@@ -106,10 +106,12 @@ MapResult make_maps(const Plan& plan, const DomeLight& light,
     }
     told.one_done();
   });
+  std::size_t usable = 0;
   for (const Sum& sum : sums) {
     result.mean_sight += sum.sight / double(frame.size());
-    result.valid_fraction += double(sum.usable) / double(frame.size());
+    usable += sum.usable;
   }
+  result.valid_fraction = double(usable) / double(frame.size());
   result.seconds["light"] = solving.seconds();
 
   Stopwatch writing;

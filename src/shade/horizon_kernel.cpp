@@ -1,19 +1,16 @@
 #include "shade/horizon_kernel.h"
 
-#include <cstdlib>
-#include <string_view>
+#include "core/instruction_set.h"
 
 namespace sunfall {
 
 SweepKernel best_sweep_kernel() {
 #if defined(__x86_64__)
-  const char* asked = std::getenv("SUNFALL_LANES");
-  const std::string_view most = asked ? asked : "avx512";
-  if (most == "plain") return sweep_plain;
-  const bool avx512 = __builtin_cpu_supports("avx512f") && __builtin_cpu_supports("avx512vl") &&
-                      __builtin_cpu_supports("avx512bw") && __builtin_cpu_supports("avx512dq");
-  if (avx512 && most != "avx2") return sweep_avx512;
-  if (__builtin_cpu_supports("avx2")) return sweep_avx2;
+  switch (instruction_set()) {
+    case InstructionSet::avx512: return sweep_avx512;
+    case InstructionSet::avx2: return sweep_avx2;
+    case InstructionSet::plain: break;
+  }
 #endif
   return sweep_plain;
 }

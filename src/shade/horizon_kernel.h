@@ -9,6 +9,7 @@
 // amortised). Rows are taken in groups, of which each line keeps one, at its own distance: the one
 // that a line of sight of middling slope meets first.
 
+#include <cstddef>
 #include <cstdint>
 
 namespace sunfall {
@@ -64,7 +65,9 @@ struct SweepJob {
   SweepScratch scratch;  // room for (row_count / kRowsPerNode + 2) nodes of one block
 };
 inline constexpr int kReceiverMargin = 8;
-inline constexpr int kMostRows = 2046 * kRowsPerNode;  // the packed code holds 2048 nodes
+// Half a million cells: as far as a packed code reaches.
+inline constexpr int kMostLevels = 13;
+inline constexpr std::size_t kMostRows = 2046 * kRowsPerNode;  // the packed code holds 2048 nodes
 
 // Number of node rows for a tile of that many rows.
 constexpr int node_rows(int tile_rows) { return (tile_rows - 1 + kNodeStride - 1) / kNodeStride + 1; }
@@ -75,8 +78,7 @@ void sweep_plain(const SweepJob& job);
 void sweep_avx2(const SweepJob& job);
 void sweep_avx512(const SweepJob& job);
 #endif
-// The fastest kernel that this processor runs. SUNFALL_LANES=plain|avx2 in the environment asks
-// for a lesser one (for tests).
+// The fastest kernel that this processor runs (core/instruction_set.h).
 SweepKernel best_sweep_kernel();
 
 }  // namespace sunfall

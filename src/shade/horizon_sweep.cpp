@@ -1,6 +1,7 @@
 #include "shade/horizon_sweep.h"
 
 #include <algorithm>
+#include <cassert>
 #include <cmath>
 
 #include "dome/horizon_steps.h"
@@ -195,6 +196,7 @@ void HorizonSweep::sweep_far(const March& m, const Direction& direction, int fir
   const double bend = bend_of(direction);
   std::vector<MarchRow> rows = m.march_rows;
   for (MarchRow& row : rows) row.sink = static_cast<float>(bend * row.u * row.u);
+  assert(rows.size() <= kMostRows);
   const std::size_t nodes = rows.size() / kRowsPerNode + 2;
   parent_height_.resize(nodes * kLinesPerBlock);
   parent_code_.resize(nodes * kLinesPerBlock);

@@ -57,7 +57,7 @@ Terrain::Terrain(Inputs inputs, Progress& progress)
     known_box_ = joined(known_box_, far_->box());
   }
   const int farthest = std::max(known_box_.columns, known_box_.rows);
-  while ((kFullReach << top_level_) < farthest) ++top_level_;
+  while ((kFullReach << top_level_) < farthest && top_level_ < kMostLevels) ++top_level_;
 }
 
 // One pass over the rasters in strips: checks heights, counts valid cells, builds level 1; the

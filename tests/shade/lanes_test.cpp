@@ -38,5 +38,22 @@ TEST(Lanes, EveryInstructionSetGivesTheSameBits) {
   }
 }
 
+TEST(Lanes, EveryInstructionSetGivesTheSameShares) {
+  SceneOptions options;
+  options.columns = options.rows = 150;
+  options.receiver_height_m = 0.5;
+  Scene scene([](double e, double n) { return rough_height(e, n); }, {}, options);
+  const TileSolver solver(scene.terrain(), even_sky(Dome::of(DomeQuality::draft)), ReceiverPlane::level);
+  const TerrainTile tile = scene.terrain().tile({20, 30, 77, 61});
+  std::vector<std::vector<float>> shares;
+  for (const char* lanes : {"plain", "avx2", "avx512"}) {
+    setenv("SUNFALL_LANES", lanes, 1);
+    shares.push_back(solver.solve(tile, Angle::degrees(2.0)).shares);
+    unsetenv("SUNFALL_LANES");
+  }
+  EXPECT_EQ(shares[0], shares[1]);
+  EXPECT_EQ(shares[0], shares[2]);
+}
+
 }  // namespace
 }  // namespace sunfall::testing
