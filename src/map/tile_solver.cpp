@@ -104,21 +104,23 @@ void TileSolver::solve_slope(HorizonSweep& sweep, Angle convergence, TileRoom& r
   const CellWindow& window = out.window;
   const std::size_t cells = out.usable.size();
   const int width = slope_->padded();
-  // Rise of the ground per metre to east and north, by central differences.
+  // Rise of the ground per metre to east and north, by central differences; from one side where the
+  // other is missing, as at the map's edge.
   const CellWindow around{window.column - 1, window.row - 1, window.columns + 2, window.rows + 2};
   const Grid<float> ground = terrain_.ground(around);
   std::vector<float> east(cells), north(cells);
-  const float per_m = static_cast<float>(0.5 / sweep_options_.cell_m);
-  const auto height = [&](int column, int row, float otherwise) {
-    const float value = ground.at(column, row);
-    return std::isnan(value) ? otherwise : value;
+  const float per_m = static_cast<float>(1.0 / sweep_options_.cell_m);
+  const auto rise = [per_m](float before, float here, float after) {
+    const float from = std::isnan(before) ? here : before, to = std::isnan(after) ? here : after;
+    const bool both = !std::isnan(before) && !std::isnan(after);
+    return std::isnan(to - from) ? 0.0F : (to - from) * (both ? 0.5F * per_m : per_m);
   };
   for (int row = 0; row < window.rows; ++row) {
     for (int column = 0; column < window.columns; ++column) {
       const std::size_t cell = static_cast<std::size_t>(row) * window.columns + column;
-      const float here = height(column + 1, row + 1, 0.0F);
-      east[cell] = (height(column + 2, row + 1, here) - height(column, row + 1, here)) * per_m;
-      north[cell] = (height(column + 1, row, here) - height(column + 1, row + 2, here)) * per_m;
+      const float here = ground.at(column + 1, row + 1);
+      east[cell] = rise(ground.at(column, row + 1), here, ground.at(column + 2, row + 1));
+      north[cell] = rise(ground.at(column + 1, row + 2), here, ground.at(column + 1, row));
     }
   }
   // Open light on the plane: level - rise·facing summed over the lines, linear in the rise.
