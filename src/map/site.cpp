@@ -5,6 +5,7 @@
 #include <cmath>
 
 #include "geo/layer_writer.h"
+#include "geo/map_scale.h"
 #include "geo/raster_source.h"
 #include "sun/ephemeris.h"
 #include "sunfall/version.h"
@@ -51,6 +52,7 @@ Site open_site(const Plan& plan) {
   const RasterSource ground = RasterSource::open(plan.site.ground, "ground");
   site.frame = ground.frame();
   site.middle = geo_place(site.frame, site.frame.middle());
+  require_true_metres(site.frame, site.middle, ground.file().string() + " (ground)");
   site.middle.place.height_m = height_at_middle(ground);
   site.series =
       make_light(plan.light, site.middle.place, plan.site.clock, plan.light_options, plan.light_where);

@@ -68,6 +68,17 @@ TEST(BadRaster, MapInFeet) {
                          "0.3048006096", "gdalwarp -t_srs EPSG:"});
 }
 
+// At 51.95° N a metre on the ground measures 1 / cos 51.95° = 1.62 m in the web maps' Mercator.
+TEST(BadRaster, MapMetresThatAreNotOfTheGround) {
+  expect_ground_refused(
+      [](RasterOrder& order) {
+        order.crs = "EPSG:3857";
+        order.transform = {643600.0, 2.0, 0.0, 6791000.0, 0.0, -2.0};
+      },
+      {"ground.tif (ground): the map's metres are not metres on the ground here", "EPSG:3857", "1.62",
+       "gdalwarp -t_srs EPSG:32631"});
+}
+
 TEST(BadRaster, HeightsInFeet) {
   expect_ground_refused([](RasterOrder& order) { order.unit = "ft"; },
                         {"ground.tif (ground): heights must be in metres", "heights in 'ft'", "A*0.3048"});
