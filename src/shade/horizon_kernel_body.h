@@ -117,18 +117,31 @@ class BlockSweep {
         return;
       }
     }
-    const float per_cell = 1.0F / row.cell;
     for (int part = 0; part < kParts; ++part) {
-      const Float lane = Lanes::to_float(Lanes::add(Lanes::count(), Lanes::set(part * Lanes::kWidth)));
-      const Float place = Lanes::mul(Lanes::add(lane, Lanes::set(v)), Lanes::set(per_cell));
-      const Float whole = Lanes::floor(place);
-      const Int index = Lanes::to_int(whole);
-      const Mask inside = Lanes::inside(index, row.count > 0 ? row.count - 1 : 0);
-      const Float nothing = Lanes::set(kNothing);
-      const Float left = Lanes::gather(row.values, index, inside, nothing);
-      const Float right = Lanes::gather(row.values + 1, index, inside, nothing);
-      z[part] = between(left, right, Lanes::sub(place, whole), row.sink);
+      z[part] = sample_coarse(row, v + static_cast<float>(part * Lanes::kWidth));
     }
+  }
+
+  // Heights of a row of larger cells, or beside its ends, under the lines from v on.
+  static Float sample_coarse(const MarchRow& row, float v) {
+    const Float lane = Lanes::to_float(Lanes::count());
+    const Float place = Lanes::mul(Lanes::add(lane, Lanes::set(v)), Lanes::set(1.0F / row.cell));
+    const Float whole = Lanes::floor(place);
+    const Int index = Lanes::to_int(whole);
+    const Float fraction = Lanes::sub(place, whole);
+    const int first = static_cast<int>(__builtin_floorf(v * (1.0F / row.cell)));
+    // The lines stand over less than a register of cells: one load and a shuffle.
+    if (row.cell > 1.0F && first >= 0 && first + Lanes::kWidth + 1 <= row.count) {
+      const Int offset = Lanes::add(index, Lanes::set(-first));
+      const Float left = Lanes::pick(Lanes::load(row.values + first), offset);
+      const Float right = Lanes::pick(Lanes::load(row.values + first + 1), offset);
+      return between(left, right, fraction, row.sink);
+    }
+    const Mask inside = Lanes::inside(index, row.count > 0 ? row.count - 1 : 0);
+    const Float nothing = Lanes::set(kNothing);
+    const Float left = Lanes::gather(row.values, index, inside, nothing);
+    const Float right = Lanes::gather(row.values + 1, index, inside, nothing);
+    return between(left, right, fraction, row.sink);
   }
   static Float between(Float left, Float right, Float fraction, float sink) {
     const Float mixed = Lanes::add(left, Lanes::mul(fraction, Lanes::sub(right, left)));

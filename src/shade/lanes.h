@@ -54,6 +54,8 @@ struct Lanes {
   static bool any(Mask a) { return a != 0; }
   static Float choose(Mask m, Float yes, Float no) { return _mm512_mask_mov_ps(no, m, yes); }
   static Int choose(Mask m, Int yes, Int no) { return _mm512_mask_mov_epi32(no, m, yes); }
+  // values[offset] for each lane; offsets below kWidth.
+  static Float pick(Float values, Int offset) { return _mm512_permutexvar_ps(offset, values); }
   static Float gather(const float* base, Int index, Mask m, Float otherwise) {
     return _mm512_mask_i32gather_ps(otherwise, m, index, base, 4);
   }
@@ -105,6 +107,7 @@ struct Lanes {
   static bool any(Mask a) { return _mm256_movemask_ps(a) != 0; }
   static Float choose(Mask m, Float yes, Float no) { return _mm256_blendv_ps(no, yes, m); }
   static Int choose(Mask m, Int yes, Int no) { return _mm256_blendv_epi8(no, yes, _mm256_castps_si256(m)); }
+  static Float pick(Float values, Int offset) { return _mm256_permutevar8x32_ps(values, offset); }
   static Float gather(const float* base, Int index, Mask m, Float otherwise) {
     return _mm256_mask_i32gather_ps(otherwise, base, index, m, 4);
   }
@@ -213,6 +216,9 @@ struct Lanes {
   }
   static Int choose(const Mask& m, const Int& yes, const Int& no) {
     return each<Int>([&](int i) { return m.lane[i] ? yes.lane[i] : no.lane[i]; });
+  }
+  static Float pick(const Float& values, const Int& offset) {
+    return each<Float>([&](int i) { return values.lane[offset.lane[i]]; });
   }
   static Float gather(const float* base, const Int& index, const Mask& m, const Float& otherwise) {
     return each<Float>([&](int i) { return m.lane[i] ? base[index.lane[i]] : otherwise.lane[i]; });
