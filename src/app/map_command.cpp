@@ -3,6 +3,7 @@
 #include <fmt/format.h>
 #include <tbb/global_control.h>
 
+#include <cmath>
 #include <cstdio>
 #include <memory>
 #include <nlohmann/json.hpp>
@@ -28,6 +29,14 @@ void print_months(const MapResult& maps) {
   fmt::print("Open field, mol m-2 d-1:");
   for (std::size_t m = 0; m < 12; ++m) fmt::print(" {:.1f}", maps.open.beam[m] + maps.open.sky[m]);
   fmt::print("; year {:.1f}\n", maps.open.year);
+}
+
+// Cells without a value are easily overlooked: a whole map of them may mean a surface that counts its
+// heights from another zero.
+void print_valid(const MapResult& maps) {
+  if (maps.valid_fraction >= 1.0) return;
+  fmt::print("{:.1f} % of the cells have a value; the others lie under the surface or have no height\n",
+             std::floor(1000.0 * maps.valid_fraction) / 10.0);
 }
 
 void run_map(const MapCommand& command) {
@@ -58,8 +67,11 @@ void run_map(const MapCommand& command) {
     fmt::print("{}\n", line.dump());
   } else if (!command.common.quiet) {
     print_months(maps);
+    print_valid(maps);
     fmt::print("{} layers, tables and pictures are in {}\n", maps.layers.size(), out.string());
     if (site.series.is_ceiling) fmt::print("This is a cloudless ceiling, not a forecast.\n");
+    fmt::print("Notes:\n");
+    for (const std::string& note : site.notes) fmt::print("  {}\n", note);
   }
 }
 

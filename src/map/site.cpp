@@ -7,6 +7,7 @@
 #include "geo/layer_writer.h"
 #include "geo/map_scale.h"
 #include "geo/raster_source.h"
+#include "geo/surface_check.h"
 #include "sun/ephemeris.h"
 #include "sunfall/version.h"
 
@@ -39,6 +40,20 @@ const char* sky_name(SkyModel sky) {
   return "";
 }
 
+// Days and named hours are the clock's. The widest zone, that of China, is 3.1 h ahead of the sun at its
+// western end.
+void note_clock(const LightSeries& series, std::vector<std::string>& notes) {
+  constexpr double kMost_h = 3.2;
+  const double clock_h = static_cast<double>(series.utc_offset.count()) / 3600.0;
+  const double sun_h = series.place.longitude.degrees() / 15.0;
+  const double ahead_h = std::remainder(clock_h - sun_h, 24.0);
+  if (std::abs(ahead_h) <= kMost_h) return;
+  notes.push_back(
+      fmt::format("the clock (UTC{:+g}) stands {:.1f} h {} the sun of the map's place: is site.clock the "
+                  "zone of this place?",
+                  clock_h, std::abs(ahead_h), ahead_h > 0 ? "ahead of" : "behind"));
+}
+
 }  // namespace
 
 std::string place_text(const Place& place) {
@@ -57,6 +72,7 @@ Site open_site(const Plan& plan) {
   site.series =
       make_light(plan.light, site.middle.place, plan.site.clock, plan.light_options, plan.light_where);
   site.notes = site.series.notes;
+  note_clock(site.series, site.notes);
   site.notes.push_back("The sun and the sky are those of the middle of the map (" +
                        place_text(site.middle.place) + ").");
   if (!plan.site.far_ground) {
@@ -64,7 +80,12 @@ Site open_site(const Plan& plan) {
         "No far_ground: hills and trees beyond the edge of the map are unknown; sight.tif tells where "
         "that may matter.");
   }
-  if (!plan.site.surface) {
+  if (plan.site.surface) {
+    const RasterSource surface = RasterSource::open(*plan.site.surface, "surface");
+    require_same_grid(surface, ground);
+    for (std::string& odd : surface_oddities(ground, surface, plan.site.receiver_height_m))
+      site.notes.push_back(std::move(odd));
+  } else {
     site.notes.push_back(
         "No surface: only the ground itself casts shade; buildings, walls and trees are left out.");
   }

@@ -5,7 +5,7 @@
 #include <cmath>
 #include <nlohmann/json.hpp>
 
-#include "app/run_program.h"
+#include "app/small_farm.h"
 
 namespace sunfall::test {
 namespace {
@@ -58,6 +58,25 @@ TEST(Vet, QuietIsSilent) {
   EXPECT_EQ(outcome.status, 0);
   EXPECT_EQ(outcome.out, "");
   EXPECT_EQ(outcome.err, "");
+}
+
+// Heights above the ground taken for a surface, and a clock from the other side of the ocean: both run, as
+// both may be meant, and both are said aloud.
+TEST(Vet, SaysWhatLooksOdd) {
+  const SmallFarm farm;
+  RasterOrder above_ground = farm_ground();
+  above_ground.values.assign(above_ground.values.size(), 0.0);
+  make_raster(farm / "surface.tif", above_ground);
+  write_text(farm / "odd.toml",
+             "[site]\nground = 'ground.tif'\nsurface = 'surface.tif'\nclock = '-05:00'\n" + kMonthlyLight);
+  for (const std::vector<std::string>& command :
+       {std::vector<std::string>{"vet", "odd.toml"}, {"map", "odd.toml", "-o", "run"}}) {
+    const Outcome outcome = farm.run(command);
+    EXPECT_EQ(outcome.status, 0) << outcome.err;
+    EXPECT_THAT(outcome.out, HasSubstr("surface lies more than 2 m below ground in 100 % of the cells"));
+    // 5.8° E is 0.4 h ahead of Greenwich.
+    EXPECT_THAT(outcome.out, HasSubstr("the clock (UTC-5) stands 5.4 h behind the sun"));
+  }
 }
 
 TEST(Vet, RealGroundToo) {
