@@ -99,14 +99,14 @@ std::vector<PlotRow> plot_rows(const std::vector<Plot>& plots, const std::vector
   return rows;
 }
 
-std::vector<PlotColumn> plot_columns(const std::vector<PlotRow>& rows, const std::vector<Period>& periods) {
+std::vector<PlotColumn> plot_columns(const std::vector<PlotRow>& rows,
+                                     const std::vector<std::string>& periods) {
   std::vector<PlotColumn> columns;
   PlotColumn areas{"area_m2", {}, {}};
   for (const PlotRow& row : rows) areas.numbers.push_back(row.area_m2);
   columns.push_back(std::move(areas));
   for (std::size_t p = 0; p < periods.size(); ++p) {
-    PlotColumn mean{"dli_" + periods[p].name + "_mean", {}, {}},
-        p10{"dli_" + periods[p].name + "_p10", {}, {}};
+    PlotColumn mean{"dli_" + periods[p] + "_mean", {}, {}}, p10{"dli_" + periods[p] + "_p10", {}, {}};
     for (const PlotRow& row : rows) {
       mean.numbers.push_back(row.by_period[p].mean);
       p10.numbers.push_back(row.by_period[p].p10);
@@ -203,9 +203,8 @@ void write_run(const Plan& plan, const Site& site, const MapResult& maps, const 
         read_light(folder / (i < periods ? layer_file(maps.periods[i]) : "dli-year.tif"), maps.frame, cells);
     told.one_done();
   });
-  LayerLight year = std::move(light.back());
-  light.pop_back();
   const std::vector<PlotRow> rows = plot_rows(plots, light);
+  LayerLight year = std::move(light.back());
 
   const MapContext context = context_of(plan, site, plots);
   ContactSheet sheet{context, {}};
@@ -223,8 +222,9 @@ void write_run(const Plan& plan, const Site& site, const MapResult& maps, const 
   if (!plots.empty()) {
     std::vector<std::string> names;
     for (const Period& period : maps.periods) names.push_back(period.name);
+    names.push_back("year");
     write_plots_csv(folder / "plots.csv", rows, names);
-    write_plots_gpkg(folder / "plots.gpkg", plots, plot_columns(rows, maps.periods), maps.frame);
+    write_plots_gpkg(folder / "plots.gpkg", plots, plot_columns(rows, names), maps.frame);
   }
   Summary summary = summary_of(plan, site, maps, rows, folder, jobs);
   summary.timings_s.emplace_back("tables and pictures", watch.seconds());
