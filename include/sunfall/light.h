@@ -7,6 +7,7 @@
 
 #include <array>
 #include <chrono>
+#include <filesystem>
 #include <optional>
 #include <string>
 #include <variant>
@@ -53,7 +54,27 @@ struct ClearSource {
 struct MonthlyGlobalSource {
   std::array<double, 12> global_mj_m2_d{};
 };
-using LightSource = std::variant<ClearSource, MonthlyGlobalSource>;
+// A station's or a sensor's record in a CSV file, at equal steps of 1 minute to 1 hour.
+struct SeriesSource {
+  enum class Stamp { begin, middle, end };  // what of its interval a time stamp names
+  enum class Unit { w_m2, j_m2, j_cm2, kj_m2, mj_m2, wh_m2, kwh_m2, umol_m2_s };  // energies: per step
+  enum class Split { logistic, erbs };  // beam and sky of an hour of which only the global is known
+
+  std::filesystem::path file;
+  std::string time = "time";  // names of columns; an empty one is not there
+  std::string global;         // on a level plane
+  std::string diffuse;        // on a level plane
+  std::string beam;           // on a plane that faces the sun
+  Stamp stamp = Stamp::end;
+  Unit unit = Unit::w_m2;
+  char delimiter = '\0';  // '\0': found out
+  char decimal = '.';     // or ','
+  bool utc = false;       // stamps without an offset are UTC, not the clock's standard time
+  Split split = Split::logistic;
+  bool allow_gaps = false;   // fill months of which more than a tenth is missing
+  bool trust_clock = false;  // take the stamps as they are, however the light of clear days lies
+};
+using LightSource = std::variant<ClearSource, MonthlyGlobalSource, SeriesSource>;
 
 struct LightOptions {
   int year = 2025;  // the calendar year whose sun is followed when the source names none

@@ -3,6 +3,7 @@
 
 #include "light/clear.h"
 #include "light/monthly.h"
+#include "light/series.h"
 
 #include <variant>
 

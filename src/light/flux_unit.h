@@ -1,0 +1,23 @@
+#pragma once
+// Units of a record, and what a record is when its values do not fit the unit it claims.
+
+#include <chrono>
+#include <string>
+
+#include "sunfall/light.h"
+
+namespace sunfall {
+
+std::string unit_name(SeriesSource::Unit unit);
+
+// Mean W m-2 over a step per one of the unit; for photons, 1 (they stay µmol m-2 s-1).
+double flux_per_unit(SeriesSource::Unit unit, std::chrono::seconds step);
+
+// What W m-2 a photon flux of 1 µmol m-2 s-1 comes with, near enough for limits (2.02 µmol per J).
+inline constexpr double kRough_w_umol = 1.0 / 2.02;
+
+// Guesses the unit that a record really has from how many times too large its flux is: "lux",
+// "J m-2 per step", … Empty where none fits.
+std::string unit_of_values(double times_too_large, SeriesSource::Unit claimed, std::chrono::seconds step);
+
+}  // namespace sunfall

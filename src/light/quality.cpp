@@ -1,0 +1,169 @@
+#include "light/quality.h"
+
+#include <fmt/format.h>
+
+#include <algorithm>
+#include <cmath>
+#include <limits>
+
+#include "light/flux_unit.h"
+#include "light/radiation_limits.h"
+#include "sunfall/error.h"
+
+namespace sunfall {
+namespace {
+
+constexpr std::int64_t kStuckFor_s = 3 * 3600;
+// Lower values stay the same for hours under a thick overcast, as far as a logger can tell.
+constexpr double kStuckFrom_w_m2 = 20.0;
+// The thickest clouds pass some hundredths (Nollas, Salazar and Gueymard 2023 set a floor of that order).
+constexpr double kDarkestClearness = 0.005;
+constexpr double kDarkFrom_w_m2 = 200.0;  // above the air: a sun some 9 degrees high
+
+void reject(Readings& readings, std::size_t i) {
+  for (auto& value : readings.value) {
+    if (!value.empty()) value[i] = std::numeric_limits<float>::quiet_NaN();
+  }
+}
+
+double value_w(const Readings& readings, std::size_t quantity, std::size_t i, double watts) {
+  return readings.has(quantity) ? readings.value[quantity][i] * watts
+                                : std::numeric_limits<double>::quiet_NaN();
+}
+
+// Comparisons with NaN are false: a quantity that is missing exceeds nothing.
+bool exceeds(double value, double least, double most) { return value < least || value > most; }
+
+bool is_open(double global_w, double diffuse_w, double beam_w, const IntervalSun& sun) {
+  const double sum_w = diffuse_w + beam_w * sun.beam_sine;
+  if (sum_w > kClosureFrom_w_m2 && std::abs(global_w / sum_w - 1.0) > closure_tolerance(sun.sine))
+    return true;
+  return global_w > kClosureFrom_w_m2 && diffuse_w / global_w > most_diffuse_over_global(sun.sine);
+}
+
+void judge_one(Readings& readings, std::size_t i, const IntervalSun& sun, double watts, QualityTally& tally) {
+  const double normal_w = sun.level_w / sun.sine;
+  const double global_w = value_w(readings, kGlobal, i, watts);
+  const double diffuse_w = value_w(readings, kDiffuse, i, watts);
+  const double beam_w = value_w(readings, kBeam, i, watts);
+  if (std::isnan(global_w) && std::isnan(diffuse_w) && std::isnan(beam_w)) return;
+  ++tally.judged;
+  const RadiationLimits most = physically_possible(sun.sine, normal_w);
+  if (exceeds(global_w, kLeastPossible_w_m2, most.global) ||
+      exceeds(diffuse_w, kLeastPossible_w_m2, most.diffuse) ||
+      exceeds(beam_w, kLeastPossible_w_m2, most.beam_normal)) {
+    ++tally.impossible;
+    reject(readings, i);
+    return;
+  }
+  if (is_open(global_w, diffuse_w, beam_w, sun)) {
+    ++tally.open;
+    reject(readings, i);
+    return;
+  }
+  const RadiationLimits rare = extremely_rare(sun.sine, normal_w);
+  if (global_w > rare.global || diffuse_w > rare.diffuse || beam_w > rare.beam_normal) ++tally.rare;
+}
+
+// The quantity that tells most about a sensor's health.
+const std::vector<float>& leading(const Readings& readings) {
+  return readings.value[readings.has(kGlobal) ? kGlobal : kDiffuse];
+}
+
+// Rejects the runs of at least three hours, and four readings, in which `belongs(i, first)` holds throughout.
+template <typename Belongs>
+long reject_runs(Readings& readings, const Belongs& belongs) {
+  const std::int64_t step_s = readings.step.count();
+  const auto least = static_cast<std::size_t>(std::max<std::int64_t>(4, kStuckFor_s / step_s));
+  long rejected = 0;
+  for (std::size_t first = 0; first < readings.size();) {
+    std::size_t end = first;
+    while (end < readings.size() && belongs(end, first) &&
+           (end == first || readings.begin_s[end] - readings.begin_s[end - 1] == step_s)) {
+      ++end;
+    }
+    if (end - first >= least) {
+      for (std::size_t i = first; i < end; ++i) reject(readings, i);
+      rejected += static_cast<long>(end - first);
+    }
+    first = std::max(end, first + 1);
+  }
+  return rejected;
+}
+
+}  // namespace
+
+QualityTally judge(Readings& readings, const std::vector<IntervalSun>& suns, double watts) {
+  QualityTally tally;
+  for (std::size_t i = 0; i < readings.size(); ++i) {
+    if (suns[i].sine > 0.0F) judge_one(readings, i, suns[i], watts, tally);
+  }
+  const std::vector<float>& value = leading(readings);
+  tally.stuck = reject_runs(readings, [&](std::size_t i, std::size_t first) {
+    return value[i] == value[first] && value[i] * watts > kStuckFrom_w_m2 && suns[i].level_w > 0.0F;
+  });
+  tally.dark = reject_runs(readings, [&](std::size_t i, std::size_t) {
+    return value[i] * watts < kDarkestClearness * suns[i].level_w && suns[i].level_w > kDarkFrom_w_m2;
+  });
+  return tally;
+}
+
+std::string QualityTally::notes() const {
+  std::string text;
+  const auto add = [&](long count, const char* words) {
+    if (count > 0) text += fmt::format("{}{} {}", text.empty() ? "" : ", ", count, words);
+  };
+  add(impossible, "beyond what is physically possible");
+  add(open, "whose parts do not sum to the whole");
+  add(stuck, "from a sensor that stood still");
+  add(dark, "dark by day");
+  if (text.empty() && rare == 0) return "";
+  std::string all = fmt::format("of {} readings by day", judged);
+  all += text.empty() ? " none was rejected" : " these were rejected: " + text;
+  if (rare > 0) all += fmt::format("; {} extremely rare ones were kept", rare);
+  return all + " (limits after Long and Shi 2008)";
+}
+
+namespace {
+
+// A cloudless hour's clearness, and how far the clearest two hours in a hundred may lie from it in any
+// climate before the unit must be another.
+constexpr double kClear = 0.75;
+constexpr double kLeastBright = 0.28;
+constexpr double kMostBright = 1.10;
+constexpr double kHighSun_w_m2 = 350.0;  // above the air on the level: some 15 degrees high
+constexpr std::size_t kLeastReadings = 50;
+
+}  // namespace
+
+void check_unit(const Readings& readings, const std::vector<IntervalSun>& suns, SeriesSource::Unit unit) {
+  const double watts =
+      unit == SeriesSource::Unit::umol_m2_s ? kRough_w_umol : flux_per_unit(unit, readings.step);
+  std::vector<double> clearness;
+  for (std::size_t i = 0; i < readings.size(); ++i) {
+    if (suns[i].level_w < kHighSun_w_m2) continue;
+    double global_w = value_w(readings, kGlobal, i, watts);
+    if (std::isnan(global_w)) {
+      global_w =
+          value_w(readings, kDiffuse, i, watts) + value_w(readings, kBeam, i, watts) * suns[i].beam_sine;
+    }
+    if (!std::isnan(global_w)) clearness.push_back(global_w / suns[i].level_w);
+  }
+  if (clearness.size() < kLeastReadings) return;
+  const auto bright = clearness.begin() + static_cast<std::ptrdiff_t>(clearness.size() * 98 / 100);
+  std::nth_element(clearness.begin(), bright, clearness.end());
+  if (*bright >= kLeastBright && *bright <= kMostBright) return;
+  const std::string real = unit_of_values(*bright / kClear, unit, readings.step);
+  throw Error(ErrorKind::data,
+              {.what = fmt::format("the values do not fit the unit {}", unit_name(unit)),
+               .where = readings.file,
+               .found = fmt::format("its clearest hours have {:.3g} times the light of a cloudless sky",
+                                    *bright / kClear),
+               .remedy = real.empty() ? "name the unit of the file; see the plan's page for those known"
+                         : real.ends_with("lux")
+                             ? "the values look like " + real +
+                                   ": a lux meter weighs light as eyes do; measure radiation or photons"
+                             : "the values look like " + real});
+}
+
+}  // namespace sunfall
