@@ -42,6 +42,7 @@ class DemoRun : public testing::Test {
                                            "draft", "-o", (temporary / "run").string()});
       EXPECT_EQ(outcome.status, 0) << outcome.err;
       EXPECT_THAT(outcome.out, testing::HasSubstr("17 layers, tables and pictures are in "));
+      EXPECT_THAT(outcome.out, testing::HasSubstr("99.4 % of the cells have a value; "));
       for (const char* stage :
            {"reading the ground", "following the light", "finishing the layers", "tables and pictures"})
         EXPECT_THAT(outcome.err, testing::HasSubstr(std::string(stage) + ": 100 %"));
