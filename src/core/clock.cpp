@@ -58,8 +58,22 @@ const date::time_zone* find_zone(const std::string& name) {
   return found == zones.end() || is_copy(name) ? nullptr : &*found;
 }
 
+// "Amsterdam" of "Europe/Amsterdam".
+std::string city_of(const std::string& zone) { return zone.substr(zone.rfind('/') + 1); }
+
+// The zone whose name is nearest, or whose city is where only a city is given.
+std::string nearest_zone(const std::string& name) {
+  const std::vector<std::string> zones = zone_names();
+  if (name.find('/') != std::string::npos) return nearest_name(name, zones);
+  std::vector<std::string> cities;
+  for (const std::string& zone : zones) cities.push_back(city_of(zone));
+  const std::string nearest = nearest_name(name, cities);
+  if (nearest.empty()) return {};
+  return zones[static_cast<std::size_t>(std::find(cities.begin(), cities.end(), nearest) - cities.begin())];
+}
+
 std::string zone_remedy(const std::string& name) {
-  const std::string nearest = nearest_name(name, zone_names());
+  const std::string nearest = nearest_zone(name);
   const std::string general =
       "give an IANA zone such as \"Europe/Amsterdam\" or a fixed offset between \"-14:00\" and \"+14:00\"";
   return nearest.empty() ? general : fmt::format("did you mean \"{}\"? Otherwise {}", nearest, general);

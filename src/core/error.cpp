@@ -17,12 +17,19 @@ int exit_status(ErrorKind kind) noexcept {
 
 namespace {
 
+// With a capital at its beginning, as it follows a full stop.
+std::string sentence(std::string clause) {
+  if (clause.front() >= 'a' && clause.front() <= 'z')
+    clause.front() = static_cast<char>(clause.front() - 'a' + 'A');
+  return clause;
+}
+
 std::string one_line(const Error::Parts& parts) {
   std::string line = parts.where;
   if (!line.empty()) line.append(": ");
   line.append(parts.what);
   if (!parts.found.empty()) line.append(" (found: ").append(parts.found).append(")");
-  if (!parts.remedy.empty()) line.append(". ").append(parts.remedy);
+  if (!parts.remedy.empty()) line.append(". ").append(sentence(parts.remedy));
   if (line.empty() || line.back() != '.') line.push_back('.');
   return line;
 }

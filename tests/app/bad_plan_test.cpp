@@ -79,7 +79,7 @@ TEST(BadPlan, UnknownTimeZone) {
              "[site]\nground = 'ground.tif'\nclock = 'Europe/Amsterdan'\n" + kMonthlyLight);
   expect_all_refuse(farm, 2,
                     {"farm.toml:3 site.clock: the time zone is not known", R"("Europe/Amsterdan")",
-                     R"(did you mean "Europe/Amsterdam"?)"});
+                     R"(Did you mean "Europe/Amsterdam"?)"});
 }
 
 // Names in a plan reach the terminal as text, whatever they hold.

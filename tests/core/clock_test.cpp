@@ -68,7 +68,9 @@ TEST(Clock, RefusesUnknownZonesAndNamesTheNearest) {
   const std::string message = refusal("Europe/Amsterdm");
   EXPECT_THAT(message, testing::HasSubstr("farm.toml:3 site.clock"));
   EXPECT_THAT(message, testing::HasSubstr("\"Europe/Amsterdm\""));
-  EXPECT_THAT(message, testing::HasSubstr("did you mean \"Europe/Amsterdam\""));
+  EXPECT_THAT(message, testing::HasSubstr("Did you mean \"Europe/Amsterdam\""));
+  EXPECT_THAT(refusal("recife"), testing::HasSubstr("Did you mean \"America/Recife\""));
+  EXPECT_THAT(refusal("Los Angeles"), testing::HasSubstr("Did you mean \"America/Los_Angeles\""));
 }
 
 TEST(Clock, RefusesWhatIsNoZone) {

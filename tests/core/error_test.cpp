@@ -11,7 +11,7 @@ TEST(Error, SaysEverythingOnOneLine) {
                                       .found = "EPSG:4326",
                                       .remedy = "reproject it to a grid in metres"});
   EXPECT_STREQ(error.what(),
-               "ground.tif: the raster is in degrees (found: EPSG:4326). reproject it to a grid in metres.");
+               "ground.tif: the raster is in degrees (found: EPSG:4326). Reproject it to a grid in metres.");
   EXPECT_EQ(error.kind(), ErrorKind::data);
   EXPECT_EQ(error.parts().where, "ground.tif");
 }
