@@ -32,7 +32,12 @@ void refuse_what_is_no_file(const PlanFile& file) {
   std::error_code error;
   const fs::file_status status = fs::status(file.path, error);
   if (!fs::exists(status)) {
-    refuse(file, 0, {"the plan does not exist", "", "", similar_file_hint(file.path)});
+    const fs::path with_ending = file.path.string() + ".toml";
+    refuse(file, 0,
+           {"the plan does not exist", "", "",
+            fs::exists(with_ending, error)
+                ? "Perhaps " + in_quotes(with_ending.filename().string()) + " is meant"
+                : similar_file_hint(file.path)});
   }
   if (fs::is_directory(status)) {
     refuse(file, 0, {"the plan is a folder", "", "", "Give the .toml file inside it"});

@@ -88,6 +88,10 @@ TEST(PlanFile, MissingNamesTheNearest) {
   EXPECT_EQ(fault.where, "farn.toml");
   EXPECT_EQ(fault.what, "the plan does not exist");
   EXPECT_EQ(fault.remedy, "Perhaps \"farm.toml\" is meant");
+  // The ending left off, beside files that are nearer in letters.
+  folder.write("longfarm.toml", "");
+  folder.write("longfarm.tif", "");
+  EXPECT_EQ(folder.fault_of_file(folder.path() / "longfarm").remedy, "Perhaps \"longfarm.toml\" is meant");
 }
 
 TEST(PlanFile, MustBeAPlainFile) {
