@@ -8,7 +8,13 @@
 #include "map/loss_table.h"
 
 #if defined(__x86_64__)
+// GCC 12 takes the deliberately undefined registers of its own header for forgotten ones.
+#pragma GCC diagnostic push
+#if !defined(__clang__)
+#pragma GCC diagnostic ignored "-Wmaybe-uninitialized"
+#endif
 #include <immintrin.h>
+#pragma GCC diagnostic pop
 #endif
 
 namespace sunfall {
