@@ -56,11 +56,14 @@ SUNFALL_CLONES void look_along_near_rows(const NearLook& look) {
 
 namespace {
 
-// The steeper of the sight lines to two points, metres per row.
+// The steeper of the sight lines to two points, metres per row. A point of the node row behind the eye that
+// lies among the eye's near rows is left out: these were looked along from the cell's own centre, while a
+// line beside it may run through a wall that the cell only looks along.
 inline __attribute__((always_inline)) float steeper(const FarRead& read, int line, float eye) {
   const float rise0 = read.before.height[line] - eye, run0 = read.u - read.before.u[line];
   const float rise1 = read.after.height[line] - eye, run1 = read.u - read.after.u[line];
-  const bool first = rise0 * run1 > rise1 * run0;
+  const bool seen_near = run1 <= static_cast<float>(kNearRows);
+  const bool first = seen_near || rise0 * run1 > rise1 * run0;
   return std::max((first ? rise0 : rise1) / (first ? run0 : run1), 0.0F);
 }
 
