@@ -4,6 +4,7 @@
 
 #include <cmath>
 
+#include "geo/far_ground_check.h"
 #include "geo/layer_writer.h"
 #include "geo/map_scale.h"
 #include "geo/raster_source.h"
@@ -75,7 +76,10 @@ Site open_site(const Plan& plan) {
   note_clock(site.series, site.notes);
   site.notes.push_back("The sun and the sky are those of the middle of the map (" +
                        place_text(site.middle.place) + ").");
-  if (!plan.site.far_ground) {
+  if (plan.site.far_ground) {
+    for (std::string& odd : far_ground_oddities(ground, *plan.site.far_ground))
+      site.notes.push_back(std::move(odd));
+  } else {
     site.notes.push_back(
         "No far_ground: hills and trees beyond the edge of the map are unknown; sight.tif tells where "
         "that may matter.");
