@@ -9,8 +9,6 @@
 #include "geo/layer_writer.h"
 
 namespace sunfall::testing {
-namespace {
-
 std::filesystem::path fresh_folder() {
   static std::atomic<int> count{0};
   const auto folder = std::filesystem::temp_directory_path() /
@@ -18,8 +16,6 @@ std::filesystem::path fresh_folder() {
   std::filesystem::create_directories(folder);
   return folder;
 }
-
-}  // namespace
 
 void write_heights(const std::filesystem::path& file, const Height& height, const SceneOptions& options) {
   start_geo();

@@ -25,6 +25,9 @@ struct SceneOptions {
   int epsg = 25831;
 };
 
+// A new empty folder among the system's temporary ones.
+std::filesystem::path fresh_folder();
+
 // East and north in `Height` are metres from the middle of the map; heights are taken at cell centres.
 class Scene {
  public:
@@ -33,7 +36,7 @@ class Scene {
   Scene(const Scene&) = delete;
   Scene& operator=(const Scene&) = delete;
 
-  Terrain& terrain() { return *terrain_; }
+  const Terrain& terrain() const { return *terrain_; }
   const std::filesystem::path& folder() const { return folder_; }
   std::filesystem::path ground_file() const { return folder_ / "ground.tif"; }
   std::filesystem::path surface_file() const { return folder_ / "surface.tif"; }
