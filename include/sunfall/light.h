@@ -76,6 +76,9 @@ struct SeriesSource {
 };
 using LightSource = std::variant<ClearSource, MonthlyGlobalSource, SeriesSource>;
 
+// The files that a source reads.
+std::vector<std::filesystem::path> files_of(const LightSource& source);
+
 struct LightOptions {
   int year = 2025;  // the calendar year whose sun is followed when the source names none
 };

@@ -39,6 +39,7 @@ void require_apart_from_inputs(const Plan& plan, const fs::path& folder) {
   for (const auto& input : {plan.site.surface, plan.site.far_ground}) {
     if (input) inputs.push_back(*input);
   }
+  for (const fs::path& file : files_of(plan.light)) inputs.push_back(file);
   if (plan.plots) inputs.push_back(plan.plots->file);
   std::error_code ignored;
   const fs::path there = fs::weakly_canonical(folder, ignored);

@@ -9,6 +9,15 @@
 
 namespace sunfall {
 
+std::vector<std::filesystem::path> files_of(const LightSource& source) {
+  return std::visit(
+      [](const auto& alternative) -> std::vector<std::filesystem::path> {
+        if constexpr (requires { alternative.file; }) return {alternative.file};
+        return {};
+      },
+      source);
+}
+
 LightSeries make_light(const LightSource& source, const Place& place, const Clock& clock,
                        const LightOptions& options, const std::string& where) {
   const LightRequest request{place, clock, options, where};

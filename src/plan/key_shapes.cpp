@@ -47,9 +47,11 @@ DayKey::operator KeyNote() const {
   return {name, "day", "", kRequired, in_quotes("01-01") + " to " + in_quotes("12-31")};
 }
 
+TableKey::operator KeyNote() const { return {name, "table", "", or_required(absent), ""}; }
+
 KeyNote choice_note(const std::string& name, const std::vector<std::string>& choices,
-                    const std::string& fallback) {
-  return {name, "text", "", in_quotes(fallback), listed(all_quoted(choices))};
+                    const std::optional<std::string>& fallback) {
+  return {name, "text", "", fallback ? in_quotes(*fallback) : kRequired, listed(all_quoted(choices))};
 }
 
 bool TableShape::has(const std::string& key) const {

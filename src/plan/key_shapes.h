@@ -81,11 +81,19 @@ struct DayKey {
   operator KeyNote() const;
 };
 
+// A table of its own inside the table; `absent` says what it means to leave it out.
+struct TableKey {
+  std::string name;
+  std::string absent;
+  operator KeyNote() const;
+};
+
 template <typename Enum>
 struct ChoiceKey {
   std::string name;
   std::vector<std::pair<std::string, Enum>> choices;
   Enum fallback{};
+  bool required = false;  // then there is no fallback
 
   std::vector<std::string> names() const {
     std::vector<std::string> all;
@@ -102,11 +110,11 @@ struct ChoiceKey {
 };
 
 KeyNote choice_note(const std::string& name, const std::vector<std::string>& choices,
-                    const std::string& fallback);
+                    const std::optional<std::string>& fallback);
 
 template <typename Enum>
 ChoiceKey<Enum>::operator KeyNote() const {
-  return choice_note(name, names(), name_of(fallback));
+  return choice_note(name, names(), required ? std::nullopt : std::optional(name_of(fallback)));
 }
 
 // A table of the plan: its keys and, where it takes names of the user's own, what each such name
@@ -116,6 +124,7 @@ struct TableShape {
   std::vector<KeyNote> keys;
   std::vector<TableShape> named = {};             // empty, or one shape
   std::map<std::string, std::string> later = {};  // keys not built yet, and what to do without
+  std::vector<TableShape> inner = {};             // of the tables that its keys hold
 
   bool has(const std::string& key) const;
   std::vector<std::string> key_names() const;

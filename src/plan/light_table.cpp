@@ -1,6 +1,10 @@
 #include "plan/light_table.h"
 
 #include <algorithm>
+#include <string>
+#include <vector>
+
+#include "plan/series_table.h"
 
 namespace sunfall {
 namespace {
@@ -19,34 +23,53 @@ const MonthsKey kTurbidity{"turbidity",
                            "3 in every month"};
 const WholeKey kYear{"year", {1950, 2100, "", "The sun is known for these years"}, 2025};
 
-const char* const kOneSource = "Give either monthly_global = [twelve numbers] or clear = true";
+const TableKey kSeries{"series", "none (one source must be given)"};
+
+const char* const kOneSource =
+    "Give one of monthly_global = [twelve numbers], series = { file = … } and clear = true";
+
+// The keys of the sources that the plan gives, in the order of the page.
+std::vector<std::string> sources_given(const TableReader& table, bool clear) {
+  std::vector<std::string> given;
+  for (const std::string& name : {kMonthlyGlobal.name, kSeries.name}) {
+    if (table.has(name)) given.push_back(name);
+  }
+  if (clear) given.push_back(kClear.name);
+  return given;
+}
 
 }  // namespace
 
 TableShape light_shape() {
-  return {"light",
-          {kMonthlyGlobal, kClear, kTurbidity, kYear},
-          {},
-          {{"series", "Give monthly_global = [twelve numbers] instead, or use a later version"}}};
+  return {"light", {kMonthlyGlobal, kSeries, kClear, kTurbidity, kYear}, {}, {}, {series_shape()}};
 }
 
 void read_light_table(TableReader& table, Plan& plan) {
   const auto monthly = table.months_if_given(kMonthlyGlobal);
   const bool clear = table.flag_if_given(kClear).value_or(false);
   const auto turbidity = table.months_if_given(kTurbidity);
-  plan.light_options.year = table.whole(kYear);
-
-  if (monthly && clear) {
-    table.refuse(kClear.name, "two sources of light are given", "monthly_global and clear", kOneSource);
+  auto series = table.table_if_given(kSeries, series_shape());
+  if (series && table.has(kYear.name)) {
+    table.refuse(kYear.name, "a series has years of its own", "", "Remove it");
   }
-  if (!monthly && !clear) {
+  if (!series) plan.light_options.year = table.whole(kYear);
+
+  const std::vector<std::string> given = sources_given(table, clear);
+  if (given.size() > 1) {
+    table.refuse(given.back(), "two sources of light are given", given[0] + " and " + given[1], kOneSource);
+  }
+  if (given.empty()) {
     table.refuse("", "no source of light is given", table.has(kClear.name) ? "clear = false" : "",
                  kOneSource);
   }
   if (turbidity && !clear) {
     table.refuse(kTurbidity.name, "turbidity is for a cloudless sky only", "", "Remove it");
   }
-  plan.light_where = table.where(monthly ? kMonthlyGlobal.name : kClear.name);
+  plan.light_where = table.where(given.front());
+  if (series) {
+    plan.light = read_series_table(*series);
+    return;
+  }
   if (monthly) {
     const bool dark =
         std::all_of(monthly->begin(), monthly->end(), [](double value) { return value == 0.0; });

@@ -238,6 +238,13 @@ std::optional<std::size_t> TableReader::position(const std::string& key,
   refuse(key, "must be " + listed(shown), in_quotes(text), did_you_mean(text, names));
 }
 
+std::optional<TableReader> TableReader::table_if_given(const TableKey& key, const TableShape& shape) {
+  const toml::node* node = take(key.name);
+  if (node == nullptr) return std::nullopt;
+  if (!node->is_table()) refuse_type(key.name, "a table, { key = value, … }", *node);
+  return TableReader(reading_, shape, node->as_table(), line_of(table_->find(key.name)->first));
+}
+
 std::vector<std::string> TableReader::own_names() const {
   std::vector<std::string> names;
   if (table_ == nullptr) return names;

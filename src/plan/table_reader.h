@@ -52,6 +52,8 @@ class TableReader {
   std::optional<std::filesystem::path> optional_path(const PathKey& key);
   std::optional<bool> flag_if_given(const FlagKey& key);
   std::optional<std::array<double, 12>> months_if_given(const MonthsKey& key);
+  // `shape` carries the inner table's whole name, "light.series".
+  std::optional<TableReader> table_if_given(const TableKey& key, const TableShape& shape);
 
   // The user's own names in the table, in the plan's order, and the table that each holds.
   std::vector<std::string> own_names() const;
@@ -88,6 +90,7 @@ template <typename Enum>
 Enum TableReader::choice(const ChoiceKey<Enum>& key) {
   const std::optional<std::size_t> at = position(key.name, key.names());
   if (at) return key.choices[*at].second;
+  if (key.required) required(key.name);
   note_default(key.name, in_quotes(key.name_of(key.fallback)));
   return key.fallback;
 }

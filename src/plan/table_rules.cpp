@@ -32,11 +32,15 @@ const std::vector<std::string>& tables_not_built_yet() {
 std::map<std::string, std::string> homes_of_keys() {
   std::map<std::string, int> count;
   std::map<std::string, std::string> homes;
-  for (const TableRule& rule : table_rules()) {
-    for (const KeyNote& key : rule.shape.keys) {
-      homes[key.name] = rule.shape.name;
+  const auto add = [&](const TableShape& shape) {
+    for (const KeyNote& key : shape.keys) {
+      homes[key.name] = shape.name;
       ++count[key.name];
     }
+  };
+  for (const TableRule& rule : table_rules()) {
+    add(rule.shape);
+    for (const TableShape& inner : rule.shape.inner) add(inner);
   }
   std::erase_if(homes, [&](const auto& home) { return count[home.first] > 1; });
   return homes;

@@ -126,6 +126,7 @@ std::vector<Summary::Input> inputs_of(const Plan& plan) {
   add(plan.site.ground);
   if (plan.site.surface) add(*plan.site.surface);
   if (plan.site.far_ground) add(*plan.site.far_ground);
+  for (const std::filesystem::path& file : files_of(plan.light)) add(file);
   if (plan.plots) add(plan.plots->file);
   return inputs;
 }

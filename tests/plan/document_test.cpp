@@ -20,6 +20,7 @@ std::vector<std::string> lines_of(const std::vector<TableShape>& tables) {
                       key.fallback + " | " + key.range);
     }
     for (const std::string& line : lines_of(table.named)) lines.push_back(line);
+    for (const std::string& line : lines_of(table.inner)) lines.push_back(line);
   }
   return lines;
 }
@@ -57,12 +58,14 @@ TEST(PlanDocument, NamesEveryTableThatIsNotBuiltYet) {
 TEST(PlanDocument, HoldsPlansThatCanBeRead) {
   const PlanFolder folder;
   const std::vector<std::string> plans = example_plans(plan_page());
-  ASSERT_EQ(plans.size(), 2U);
+  ASSERT_EQ(plans.size(), 3U);
   const Plan whole = folder.read(plans[0]);
   EXPECT_EQ(whole.name, "Alder Reach");
   EXPECT_THAT(whole.defaults, ::testing::ElementsAre("light.year = 2025", "periods.months = true"));
   const Plan shortest = folder.read(plans[1]);
   EXPECT_EQ(shortest.site.clock.name(), "+01:00");
+  const Plan station = folder.read(plans[2]);
+  EXPECT_EQ(std::get<SeriesSource>(station.light).global, "GHI");
 }
 
 }  // namespace

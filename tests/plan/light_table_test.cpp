@@ -11,7 +11,8 @@ namespace {
 using ::testing::Each;
 using ::testing::ElementsAre;
 
-const std::string kOneSource = "Give either monthly_global = [twelve numbers] or clear = true";
+const std::string kOneSource =
+    "Give one of monthly_global = [twelve numbers], series = { file = … } and clear = true";
 const std::string kUnits =
     "Write the mean day's sum on a level plane: kWh m-2 d-1 times 3.6, mean W m-2 times 0.0864";
 const std::string kAt = "farm.toml:5 light.monthly_global";
@@ -80,11 +81,20 @@ TEST(LightTable, WantsExactlyOneSource) {
   EXPECT_EQ(folder.read(months_to("2") + "clear = false\n").light.index(), 1U);
 }
 
-TEST(LightTable, DoesNotKnowSeriesYet) {
+TEST(LightTable, TakesASeriesAlone) {
   const PlanFolder folder;
-  folder.expect_fault(plan_with_light("series = { file = 'station.csv' }"), "farm.toml:5 light.series",
-                      "this version does not know the key yet", "",
-                      "Give monthly_global = [twelve numbers] instead, or use a later version");
+  const std::string series =
+      "series = { file = 'station.csv', stamp = 'end', global = 'ghi', unit = 'W m-2' }\n";
+  EXPECT_EQ(std::get<SeriesSource>(folder.read(plan_with_light(series)).light).file,
+            folder.path() / "station.csv");
+  folder.expect_fault(plan_with_light(series + "year = 2024\n"), "farm.toml:6 light.year",
+                      "a series has years of its own", "", "Remove it");
+  folder.expect_fault(months_to("2") + series, "farm.toml:6 light.series", "two sources of light are given",
+                      "monthly_global and series", kOneSource);
+  folder.expect_fault(plan_with_light(series + "turbidity = 3\n"), "farm.toml:6 light.turbidity",
+                      "turbidity is for a cloudless sky only", "", "Remove it");
+  folder.expect_fault(plan_with_light("series = 'station.csv'"), "farm.toml:5 light.series",
+                      "must be a table, { key = value, … }", "a string: \"station.csv\"", "");
 }
 
 TEST(LightTable, TakesOneTurbidityOrTwelve) {

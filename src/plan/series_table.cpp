@@ -1,0 +1,86 @@
+#include "plan/series_table.h"
+
+namespace sunfall {
+namespace {
+
+using Stamp = SeriesSource::Stamp;
+using Unit = SeriesSource::Unit;
+using Split = SeriesSource::Split;
+
+const PathKey kFile{"file", ""};
+const TextKey kTime{"time", "time", ""};
+const ChoiceKey<Stamp> kStamp{
+    "stamp", {{"begin", Stamp::begin}, {"middle", Stamp::middle}, {"end", Stamp::end}}, Stamp::end, true};
+const TextKey kGlobal{"global", std::nullopt, "none (no such column)"};
+const TextKey kDiffuse{"diffuse", std::nullopt, "none (no such column)"};
+const TextKey kBeam{"beam", std::nullopt, "none (no such column)"};
+const ChoiceKey<Unit> kUnit{"unit",
+                            {{"W m-2", Unit::w_m2},
+                             {"J m-2", Unit::j_m2},
+                             {"J cm-2", Unit::j_cm2},
+                             {"kJ m-2", Unit::kj_m2},
+                             {"MJ m-2", Unit::mj_m2},
+                             {"Wh m-2", Unit::wh_m2},
+                             {"kWh m-2", Unit::kwh_m2},
+                             {"µmol m-2 s-1", Unit::umol_m2_s},
+                             {"umol m-2 s-1", Unit::umol_m2_s}},
+                            Unit::w_m2,
+                            true};
+const ChoiceKey<char> kDelimiter{"delimiter", {{"auto", '\0'}, {",", ','}, {";", ';'}, {"tab", '\t'}}, '\0'};
+const ChoiceKey<char> kDecimal{"decimal", {{".", '.'}, {",", ','}}, '.'};
+const FlagKey kUtc{"utc", false, ""};
+const ChoiceKey<Split> kSplit{
+    "split", {{"logistic", Split::logistic}, {"erbs", Split::erbs}}, Split::logistic};
+const FlagKey kAllowGaps{"allow_gaps", false, ""};
+const FlagKey kTrustClock{"trust_clock", false, ""};
+
+// What the file's light is must follow from the plan, before the file is read.
+void check_columns(const TableReader& table, const SeriesSource& source) {
+  const bool parts = !source.diffuse.empty() && !source.beam.empty();
+  if (source.global.empty() && !parts) {
+    table.refuse("", "no column of global radiation is named", "",
+                 "Add global = \"<the column's name>\", or both diffuse and beam");
+  }
+  if (source.unit == Unit::umol_m2_s && source.global.empty()) {
+    table.refuse(kUnit.name, "photons are taken as global, with or without diffuse", "no global",
+                 "Name the column of the level quantum sensor as global");
+  }
+  if (source.unit == Unit::umol_m2_s && !source.beam.empty()) {
+    table.refuse(kBeam.name, "photons are taken as global, with or without diffuse", "beam", "Remove it");
+  }
+  const auto same = [](const std::string& a, const std::string& b) { return !a.empty() && a == b; };
+  if (same(source.global, source.diffuse) || same(source.global, source.beam) ||
+      same(source.diffuse, source.beam)) {
+    table.refuse("", "one column is named twice", "", "Name each quantity's own column");
+  }
+}
+
+}  // namespace
+
+TableShape series_shape() {
+  return {"light.series",
+          {kFile, kTime, kStamp, kGlobal, kDiffuse, kBeam, kUnit, kDelimiter, kDecimal, kUtc, kSplit,
+           kAllowGaps, kTrustClock}};
+}
+
+SeriesSource read_series_table(TableReader& table) {
+  SeriesSource source;
+  source.file = table.path(kFile);
+  source.time = table.text(kTime);
+  source.stamp = table.choice(kStamp);
+  source.global = table.optional_text(kGlobal).value_or("");
+  source.diffuse = table.optional_text(kDiffuse).value_or("");
+  source.beam = table.optional_text(kBeam).value_or("");
+  source.unit = table.choice(kUnit);
+  source.delimiter = table.choice(kDelimiter);
+  source.decimal = table.choice(kDecimal);
+  source.utc = table.flag(kUtc);
+  source.split = table.choice(kSplit);
+  source.allow_gaps = table.flag(kAllowGaps);
+  source.trust_clock = table.flag(kTrustClock);
+  check_columns(table, source);
+  table.finish();
+  return source;
+}
+
+}  // namespace sunfall
