@@ -38,8 +38,9 @@ TEST(Tiles, OrderAndThreadsLeaveTheSameBytes) {
     const MapRun first(plan, light, {1, 48, false});
     const std::set<std::string> names = names_in(first.folder());
     EXPECT_EQ(names.size(), 12U + 4U + 24U);
-    for (const MapOptions& other :
-         {MapOptions{2, 48, false}, MapOptions{1, 48, true}, MapOptions{2, 48, true}}) {
+    std::vector<MapOptions> others{{2, 48, true}};
+    if (plane == ReceiverPlane::level) others.insert(others.end(), {{2, 48, false}, {1, 48, true}});
+    for (const MapOptions& other : others) {
       const MapRun second(plan, light, other);
       ASSERT_EQ(names_in(second.folder()), names);
       for (const std::string& name : names)

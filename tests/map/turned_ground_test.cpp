@@ -41,7 +41,7 @@ double beam_share(const CanyonPlace& place, double grid_azimuth_deg, const char*
   options = centred(options, place.epsg, place.longitude_deg, place.latitude_deg);
   Scene scene(canyon(grid_azimuth_deg), {}, options);
   Plan plan = clear_plan(scene, options);
-  plan.dome = {DomeQuality::standard, SkyModel::isotropic};
+  plan.dome.sky = SkyModel::isotropic;
   plan.output.shares = true;
   const PlanLight light = light_of_plan(plan);
   const MapRun run(plan, light);
