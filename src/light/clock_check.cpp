@@ -86,7 +86,7 @@ std::string causes(double late_min, const Readings& readings, const SeriesSource
   if (source.stamp == Stamp::begin && near(step_min)) add("give stamp = \"end\"");
   if (!source.utc && offset_min != 0.0 && near(-offset_min)) add("give utc = true if the stamps are UTC");
   if (source.utc && offset_min != 0.0 && near(offset_min)) add("remove utc = true");
-  add("mend the stamps or the plan's clock");
+  add("mend the stamps, the plan's clock or the place of its map");
   return text + "; trust_clock = true takes them as they are";
 }
 

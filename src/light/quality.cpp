@@ -129,14 +129,16 @@ namespace {
 // A cloudless hour's clearness, and how far the clearest two hours in a hundred may lie from it in any
 // climate before the unit must be another.
 constexpr double kClear = 0.75;
-constexpr double kLeastBright = 0.28;
+constexpr double kLeastBright = 0.35;
+constexpr double kOddlyDark = 0.5;
 constexpr double kMostBright = 1.10;
 constexpr double kHighSun_w_m2 = 350.0;  // above the air on the level: some 15 degrees high
 constexpr std::size_t kLeastReadings = 50;
 
 }  // namespace
 
-void check_unit(const Readings& readings, const std::vector<IntervalSun>& suns, SeriesSource::Unit unit) {
+std::string check_unit(const Readings& readings, const std::vector<IntervalSun>& suns,
+                       SeriesSource::Unit unit) {
   const double watts =
       unit == SeriesSource::Unit::umol_m2_s ? kRough_w_umol : flux_per_unit(unit, readings.step);
   std::vector<double> clearness;
@@ -149,10 +151,16 @@ void check_unit(const Readings& readings, const std::vector<IntervalSun>& suns, 
     }
     if (!std::isnan(global_w)) clearness.push_back(global_w / suns[i].level_w);
   }
-  if (clearness.size() < kLeastReadings) return;
+  if (clearness.size() < kLeastReadings) return "";
   const auto bright = clearness.begin() + static_cast<std::ptrdiff_t>(clearness.size() * 98 / 100);
   std::nth_element(clearness.begin(), bright, clearness.end());
-  if (*bright >= kLeastBright && *bright <= kMostBright) return;
+  if (*bright >= kLeastBright && *bright <= kMostBright) {
+    if (*bright >= kOddlyDark) return "";
+    return fmt::format(
+        "the clearest hours have only {:.0f} % of a cloudless sky's light: is the sensor shaded, dirty "
+        "or under a cover?",
+        100.0 * *bright / kClear);
+  }
   const std::string real = unit_of_values(*bright / kClear, unit, readings.step);
   throw Error(ErrorKind::data,
               {.what = fmt::format("the values do not fit the unit {}", unit_name(unit)),

@@ -23,7 +23,9 @@ struct QualityTally {
 // Sets readings that fail to NaN, in all quantities. `watts` is W m-2 of one of the file's unit.
 QualityTally judge(Readings& readings, const std::vector<IntervalSun>& suns, double watts);
 
-// Throws Error(data) where the values as a whole do not fit the unit, naming the one that they fit.
-void check_unit(const Readings& readings, const std::vector<IntervalSun>& suns, SeriesSource::Unit unit);
+// Throws Error(data) where the values as a whole do not fit the unit, naming the one that they fit. A note
+// where they are oddly low; else nothing.
+std::string check_unit(const Readings& readings, const std::vector<IntervalSun>& suns,
+                       SeriesSource::Unit unit);
 
 }  // namespace sunfall

@@ -165,12 +165,12 @@ LightSeries make_series(const SeriesSource& source, const LightRequest& request)
   // The clock first: it is told by the hours alone, while a wrong one makes any unit look wrong.
   const std::string clock_note =
       check_clock(clock_shifts_min(readings, suns, series), readings, source, series.utc_offset);
-  check_unit(readings, suns, source.unit);
+  const std::string unit_note = check_unit(readings, suns, source.unit);
   check_night(readings, suns, watts);
   const QualityTally tally = judge(readings, suns, watts);
 
   series.notes = readings.notes;
-  for (const std::string& note : {clock_note, tally.notes()}) {
+  for (const std::string& note : {clock_note, unit_note, tally.notes()}) {
     if (!note.empty()) series.notes.push_back(note);
   }
   StepLight steps = steps_of(readings, suns, series, flux);

@@ -181,6 +181,7 @@ TEST(SeriesRefusals, NameTheUnitOfTheValues) {
   EXPECT_THAT(remedy(0.11, Unit::w_m2), HasSubstr("look like klux"));
   EXPECT_EQ(remedy(3600.0, Unit::w_m2), "the values look like J m-2 per step");
   EXPECT_EQ(remedy(3.6, Unit::w_m2), "the values look like kJ m-2 per step");
+  EXPECT_EQ(remedy(0.36, Unit::w_m2), "the values look like J cm-2 per step");
   EXPECT_EQ(remedy(0.0036, Unit::w_m2), "the values look like MJ m-2 per step");
   EXPECT_EQ(remedy(0.001, Unit::w_m2), "the values look like kWh m-2 per step");
   EXPECT_EQ(remedy(2.0, Unit::w_m2), "the values look like µmol m-2 s-1");
