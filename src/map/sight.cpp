@@ -10,7 +10,12 @@ namespace sunfall {
 namespace {
 
 constexpr int kDirections = 36;
-constexpr int kLattice = 8;  // sight is found at every eighth cell and read between
+
+// Sight is found on a lattice of cells and read between. It changes over distances like that of the
+// unseen obstacle's height; half of that, in cells, is fine enough.
+int lattice_of(double cell_m) {
+  return std::clamp(static_cast<int>(std::lround(0.5 * kUnseenObstacle_m / cell_m)), 1, 16);
+}
 
 // Whether any level knows the height at a place, counted in map cells from the map's corner. The
 // finest level that reaches the place answers.
@@ -52,13 +57,14 @@ double sight_at(const TerrainTile& tile, double x, double y, double cell_m) {
 
 std::vector<float> tile_sight(const TerrainTile& tile, double cell_m) {
   const CellWindow& window = tile.window;
-  const int columns = (window.columns - 1) / kLattice + 2, rows = (window.rows - 1) / kLattice + 2;
+  const int lattice_cells = lattice_of(cell_m);
+  const int columns = (window.columns - 1) / lattice_cells + 2, rows = (window.rows - 1) / lattice_cells + 2;
   std::vector<double> lattice(static_cast<std::size_t>(columns) * rows);
   for (int row = 0; row < rows; ++row) {
     for (int column = 0; column < columns; ++column) {
       // The last lattice lines stand on the tile's last cells.
-      const int c = std::min(column * kLattice, window.columns - 1),
-                r = std::min(row * kLattice, window.rows - 1);
+      const int c = std::min(column * lattice_cells, window.columns - 1),
+                r = std::min(row * lattice_cells, window.rows - 1);
       lattice[static_cast<std::size_t>(row) * columns + column] =
           sight_at(tile, window.column + c + 0.5, window.row + r + 0.5, cell_m);
     }
@@ -66,11 +72,11 @@ std::vector<float> tile_sight(const TerrainTile& tile, double cell_m) {
   std::vector<float> sight(static_cast<std::size_t>(window.columns) * window.rows);
   for (int row = 0; row < window.rows; ++row) {
     for (int column = 0; column < window.columns; ++column) {
-      const int c = column / kLattice, r = row / kLattice;
-      const double fx =
-          double(column % kLattice) / std::max(1, std::min(kLattice, window.columns - 1 - c * kLattice));
-      const double fy =
-          double(row % kLattice) / std::max(1, std::min(kLattice, window.rows - 1 - r * kLattice));
+      const int c = column / lattice_cells, r = row / lattice_cells;
+      const double fx = double(column % lattice_cells) /
+                        std::max(1, std::min(lattice_cells, window.columns - 1 - c * lattice_cells));
+      const double fy = double(row % lattice_cells) /
+                        std::max(1, std::min(lattice_cells, window.rows - 1 - r * lattice_cells));
       const double* at = lattice.data() + static_cast<std::size_t>(r) * columns + c;
       const double above = at[0] + fx * (at[1] - at[0]);
       const double below = at[columns] + fx * (at[columns + 1] - at[columns]);
