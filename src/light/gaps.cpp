@@ -122,20 +122,52 @@ void check_gaps(const std::vector<MonthGaps>& months, bool allowed, const std::s
                          "around and from other years"});
 }
 
+namespace {
+
+void put(StepLight& steps, const LightSeries& series, std::size_t i, const Clearness& clearness) {
+  const double scale = extraterrestrial_level_w_m2(series, i) / clearness.above_air;
+  steps.global[i] = static_cast<float>(scale * clearness.global);
+  steps.sky[i] = static_cast<float>(scale * clearness.sky);
+}
+
+bool is_gap(const StepLight& steps, const LightSeries& series, std::size_t i) {
+  return series.sun.mean_sine[i] > 0.0F && std::isnan(steps.global[i]);
+}
+
+// Where the days lengthen fast, a step at dawn may have been dark on every day around: it gets the
+// clearness of its own day. False where the day has none.
+bool fill_from_day(StepLight& steps, const LightSeries& series, std::size_t day) {
+  Clearness sums;
+  bool any = false;
+  const std::size_t first = day * kStepsPerDay;
+  for (std::size_t i = first; i < first + kStepsPerDay; ++i) {
+    any = any || is_gap(steps, series, i);
+    if (std::isnan(steps.global[i])) continue;
+    sums.global += steps.global[i];
+    sums.sky += steps.sky[i];
+    sums.above_air += extraterrestrial_level_w_m2(series, i);
+  }
+  if (!any) return true;
+  if (sums.above_air <= 0.0) return false;
+  for (std::size_t i = first; i < first + kStepsPerDay; ++i) {
+    if (is_gap(steps, series, i)) put(steps, series, i, sums);
+  }
+  return true;
+}
+
+}  // namespace
+
 bool fill_gaps(StepLight& steps, const LightSeries& series) {
   const StepLight known = steps;
   const GapFiller filler(known, series);
-  bool all = true;
   for (std::size_t i = 0; i < known.global.size(); ++i) {
-    if (series.sun.mean_sine[i] <= 0.0F || !std::isnan(known.global[i])) continue;
+    if (!is_gap(known, series, i)) continue;
     const Clearness clearness = filler.around(i);
-    if (clearness.above_air <= 0.0) {
-      all = false;
-      continue;
-    }
-    const double scale = extraterrestrial_level_w_m2(series, i) / clearness.above_air;
-    steps.global[i] = static_cast<float>(scale * clearness.global);
-    steps.sky[i] = static_cast<float>(scale * clearness.sky);
+    if (clearness.above_air > 0.0) put(steps, series, i, clearness);
+  }
+  bool all = true;
+  for (std::size_t day = 0; day < known.global.size() / kStepsPerDay; ++day) {
+    all = fill_from_day(steps, series, day) && all;
   }
   return all;
 }

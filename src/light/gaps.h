@@ -21,8 +21,8 @@ std::vector<MonthGaps> count_gaps(const StepLight& steps, const LightSeries& ser
 void check_gaps(const std::vector<MonthGaps>& months, bool allowed, const std::string& where);
 
 // Every unknown step gets the mean clearness, of beam and of sky, of the same time on the nearest days that
-// know it, at most three before and three after within 15 days, else of the same season in other years.
-// Returns false where there is nothing to fill from.
+// know it, at most three before and three after within 15 days, else of the same season in other years,
+// else of its own day. Returns false where there is nothing to fill from.
 bool fill_gaps(StepLight& steps, const LightSeries& series);
 
 // "2019: January 3.2 %, May 0.1 %"; empty without a gap.
