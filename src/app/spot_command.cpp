@@ -72,7 +72,7 @@ void require_day_of_year(const std::string& text, std::chrono::month_day day, in
                                 "--day", text, "Give another day, or a leap year"});
 }
 
-void print_spot(const Spot& spot, const std::filesystem::path& out) {
+void print_spot(const Plan& plan, const Spot& spot, const std::filesystem::path& out) {
   fmt::print("{:.1f} E, {:.1f} N, ground {:.1f} m (cell centre)\n\n", spot.centre.east, spot.centre.north,
              spot.ground_m);
   fmt::print("{:<22} {:>8} {:>8} {:>8} {:>10} {:>8}\n", "mol m-2 d-1", "beam", "sky", "total", "open field",
@@ -85,6 +85,9 @@ void print_spot(const Spot& spot, const std::filesystem::path& out) {
   }
   fmt::print("{:<22} {:>8} {:>8} {:8.2f} {:10.2f} {:6.1f} %\n", "Year", "", "", spot.year, spot.open.year,
              100.0 * spot.year / spot.open.year);
+  if (plan.site.receiver_plane == ReceiverPlane::ground) {
+    fmt::print("\nThe months are in the plane of the ground; the day's curve is for a level receiver.\n");
+  }
   fmt::print("\nSun path, months and the day's curve are in {}\n", out.string());
 }
 
@@ -124,7 +127,7 @@ void run_spot(const SpotCommand& command) {
   if (command.common.json)
     fmt::print("{}\n", as_json(spot, out).dump());
   else if (!command.common.quiet)
-    print_spot(spot, out);
+    print_spot(plan, spot, out);
 }
 
 }  // namespace

@@ -65,9 +65,9 @@ struct SweepJob {
   SweepScratch scratch;  // room for (row_count / kRowsPerNode + 2) nodes of one block
 };
 inline constexpr int kReceiverMargin = 8;
-// Half a million cells: as far as a packed code reaches.
-inline constexpr int kMostLevels = 13;
-inline constexpr std::size_t kMostRows = 2046 * kRowsPerNode;  // the packed code holds 2048 nodes
+// A million cells: as far as a packed code reaches.
+inline constexpr int kMostLevels = 14;
+inline constexpr std::size_t kMostRows = 1022 * kRowsPerNode;  // the packed code holds 1024 nodes
 
 // Number of node rows for a tile of that many rows.
 constexpr int node_rows(int tile_rows) { return (tile_rows - 1 + kNodeStride - 1) / kNodeStride + 1; }

@@ -10,7 +10,7 @@ using Float = Lanes::Float;
 using Int = Lanes::Int;
 using Mask = Lanes::Mask;
 constexpr int kParts = kLinesPerBlock / Lanes::kWidth;
-constexpr int kNodeBits = 11;
+constexpr int kNodeBits = 10;
 
 // A point of the hull packed in one integer: twice its u above, its node's index below.
 inline std::int32_t packed(float u, int node) {
@@ -73,7 +73,7 @@ class BlockSweep {
       : job_(job), block_(block), first_line_(job.first_line + block * kLinesPerBlock) {
     for (int part = 0; part < kParts; ++part) {
       height_[part] = parent_height_[part] = Lanes::set(kNothing);
-      code_[part] = parent_code_[part] = Lanes::set(packed(-5.0e5F, 0));
+      code_[part] = parent_code_[part] = Lanes::set(packed(-1.0e6F, 0));
       store_node(0, part);
     }
   }
