@@ -112,6 +112,33 @@ TEST(Horizon, FarRidgeSinksBelowTheEarthsCurve) {
   EXPECT_LT(step_tangent(step), ridge / distance - 0.001);
 }
 
+// Fine cells (a drone's) with far ground: distances of half a million cells and more.
+TEST(Horizon, FarHillBehindFineCells) {
+  SceneOptions options;
+  options.columns = options.rows = 40;
+  options.cell_m = 0.05;
+  Scene scene([](double, double) { return 0.0; }, {}, options);
+  SceneOptions far_options;
+  far_options.columns = 800;
+  far_options.rows = 40;
+  far_options.cell_m = 100.0;
+  far_options.west = options.west - 40'000.0;
+  far_options.north = options.north + 2'000.0;
+  const auto far_file = scene.folder() / "far.tif";
+  write_heights(
+      far_file, [](double east, double) { return east > 30'000.0 ? 2'400.0 : 0.0; }, far_options);
+  SilentProgress quiet;
+  Terrain terrain({RasterSource::open(scene.ground_file(), "ground"), {}, far_file, 0.0}, quiet);
+  const TerrainTile tile = terrain.tile({20, 20, 1, 1});
+  HorizonSweep sweep(tile, {0.05});
+  std::uint16_t step = 0;
+  sweep.look_near({Angle::degrees(90.0)});
+  sweep.look_far({Angle::degrees(90.0)}, &step);
+  const double distance = 30'000.0, drop = distance * distance * 0.87 / (2.0 * 6'371'000.0);
+  // A step is 0.0027 wide here; a pooled cell of half a kilometre errs by half of that in 30.
+  EXPECT_NEAR(step_tangent(step), (2'400.0 - drop) / distance, 0.004);
+}
+
 TEST(Horizon, OneCellMap) {
   SceneOptions options;
   options.columns = options.rows = 1;
