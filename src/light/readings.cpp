@@ -19,6 +19,8 @@ namespace {
 constexpr float kNone = std::numeric_limits<float>::quiet_NaN();
 constexpr long kMostLinesBelowHeader = 4;  // units and the like between names and values
 constexpr std::int64_t kHour_s = 3600;
+constexpr double kLargest = 1e9;        // J m-2 of an hour are below 1e7
+constexpr std::int64_t kMostGaps = 10;  // the record's length is at most so many times its readings
 
 bool is_missing(std::string_view text) {
   for (const char* word : {"", "NaN", "nan", "NAN", "NA", "N/A", "null", "NULL", "None", "-", "--"}) {
@@ -166,7 +168,9 @@ class ReadingsReader {
           "a value is not a number", shown_text(text),
           comma ? "give decimal = \",\" in the plan" : "leave a missing value empty, or write NaN or -9999");
     }
-    return is_missing(value) ? kNone : static_cast<float>(value);
+    if (is_missing(value)) return kNone;
+    if (std::abs(value) > kLargest) refuse("a value is beyond any unit", shown_text(text), "");
+    return static_cast<float>(value);
   }
 
   void check_step_back(const TimeStamp& stamp, std::int64_t time_s) const {
@@ -208,6 +212,14 @@ class ReadingsReader {
         refuse_daylight_saving(fmt::format("{}:{}", readings_.file, readings_.line[i]),
                                "an hour is left out where the clock is set forward");
       }
+    }
+    const std::int64_t length_s = readings_.begin_s.back() - readings_.begin_s.front();
+    if (length_s / step_s > kMostGaps * static_cast<std::int64_t>(readings_.size())) {
+      throw Error(ErrorKind::data,
+                  {.what = "the record is almost all gaps",
+                   .where = readings_.file,
+                   .found = fmt::format("{} readings in {} days", readings_.size(), length_s / 86400),
+                   .remedy = "is a year mistyped in one of the stamps?"});
     }
     readings_.step = std::chrono::seconds{step_s};
   }

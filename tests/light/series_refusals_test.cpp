@@ -100,6 +100,15 @@ TEST(SeriesRefusals, OrderAndSpacing) {
   EXPECT_EQ(refusal.what, "the record's step must be whole minutes, from 1 to 60");
 }
 
+TEST(SeriesRefusals, AMistypedYear) {
+  const Refusal refusal =
+      refusal_of("time,ghi\n1955-01-01T05:00,1\n1955-01-01T06:00,2\n2095-01-01T07:00,3\n");
+  EXPECT_EQ(refusal.what, "the record is almost all gaps");
+  EXPECT_EQ(refusal_of("time,ghi\n2025-01-01T05:00,1\n2025-01-01T06:00,1e300\n").what,
+            "a value is beyond any unit");
+  EXPECT_THAT(refusal_of("time,ghi\n2125-01-01T05:00,1\n2125-01-01T06:00,2\n").found, HasSubstr("2125"));
+}
+
 // The zone of Berlin goes forward on 30 March 2025 at 02:00 and back on 26 October at 03:00.
 TEST(SeriesRefusals, DaylightSavingInTheStamps) {
   const std::string zone = "Europe/Berlin";
