@@ -142,6 +142,17 @@ TEST(Series, QuantumSensorPassesUnchanged) {
   }
 }
 
+// With a shaded second sensor the sky's photons are measured too, and are as little touched.
+TEST(Series, ShadedQuantumSensorPassesUnchanged) {
+  const LightSeries back = run_back(lowland_truth(), {.step_min = 10, .columns = "pq"});
+  expect_sound(back);
+  for (std::size_t i = 0; i < back.steps.size(); ++i) {
+    const LightStep& truth = lowland_truth().steps[i];
+    ASSERT_NEAR(back.steps[i].sky_umol, truth.sky_umol, 1e-5 * global_umol(truth) + 1e-4) << i;
+    ASSERT_NEAR(back.steps[i].beam_umol, truth.beam_umol, 1e-5 * global_umol(truth) + 1e-4) << i;
+  }
+}
+
 // Closure to the rounding of a float, on every step, and a sky that is a part of it.
 TEST(Series, SplitHoursAreClosed) {
   for (const auto split : {SeriesSource::Split::logistic, SeriesSource::Split::erbs}) {

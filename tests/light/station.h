@@ -38,7 +38,7 @@ inline LightSeries cloudy_truth(const Place& place, int year, const std::string&
 struct LoggerFormat {
   int step_min = 60;
   SeriesSource::Stamp stamp = SeriesSource::Stamp::end;
-  std::string columns = "gdb";   // of global, diffuse, beam normal, photons (p)
+  std::string columns = "gdb";   // of global, diffuse, beam normal, photons (p) and those of the sky (q)
   double scale = 1.0;            // of all values
   std::string offset;            // written behind each stamp; its value is added to the stamp
   int clock_error_min = 0;       // how much later the clock runs
@@ -57,7 +57,7 @@ inline std::string stamp_text(std::chrono::sys_seconds time) {
 
 // What an instrument shows over [begin, begin + step) of the truth: means, the beam normal weighted by time.
 struct Shown {
-  double global = 0.0, diffuse = 0.0, beam = 0.0, photons = 0.0;
+  double global = 0.0, diffuse = 0.0, beam = 0.0, photons = 0.0, sky_photons = 0.0;
 };
 inline Shown shown(const LightSeries& truth, std::size_t minute, int step_min) {
   Shown mean;
@@ -67,16 +67,22 @@ inline Shown shown(const LightSeries& truth, std::size_t minute, int step_min) {
     mean.global += global_w(step);
     mean.diffuse += step.sky_w;
     mean.photons += global_umol(step);
+    mean.sky_photons += step.sky_umol;
     if (truth.sun.mean_sine[i] > 0.0F) mean.beam += step.beam_w / truth.sun.mean_sine[i];
   }
-  for (double* value : {&mean.global, &mean.diffuse, &mean.beam, &mean.photons}) *value /= step_min;
+  for (double* value : {&mean.global, &mean.diffuse, &mean.beam, &mean.photons, &mean.sky_photons})
+    *value /= step_min;
   return mean;
 }
 
 inline std::string logged(const LightSeries& truth, const LoggerFormat& format) {
   std::string text = "time";
   for (const char column : format.columns) {
-    text += column == 'g' ? ",ghi" : column == 'd' ? ",dhi" : column == 'b' ? ",dni" : ",par";
+    text += column == 'g'   ? ",ghi"
+            : column == 'd' ? ",dhi"
+            : column == 'b' ? ",dni"
+            : column == 'p' ? ",par"
+                            : ",pard";
   }
   text += '\n';
   const std::chrono::sys_seconds midnight =
@@ -97,7 +103,8 @@ inline std::string logged(const LightSeries& truth, const LoggerFormat& format) 
       const double value = column == 'g'   ? values.global
                            : column == 'd' ? values.diffuse
                            : column == 'b' ? values.beam
-                                           : values.photons;
+                           : column == 'p' ? values.photons
+                                           : values.sky_photons;
       char number[32];
       std::snprintf(number, sizeof number, ",%.7g", value * format.scale);
       text += number;
@@ -118,6 +125,7 @@ inline SeriesSource source_of(const TextFile& file, const LoggerFormat& format) 
     source.global = "par";
     source.unit = SeriesSource::Unit::umol_m2_s;
   }
+  if (format.columns.find('q') != std::string::npos) source.diffuse = "pard";
   return source;
 }
 
