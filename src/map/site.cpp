@@ -2,6 +2,7 @@
 
 #include <fmt/format.h>
 
+#include <cctype>
 #include <cmath>
 
 #include "geo/far_ground_check.h"
@@ -55,6 +56,14 @@ void note_clock(const LightSeries& series, std::vector<std::string>& notes) {
                   clock_h, std::abs(ahead_h), ahead_h > 0 ? "ahead of" : "behind"));
 }
 
+// A note as a sentence of its own.
+std::string sentence(std::string note) {
+  if (note.empty()) return note;
+  note[0] = static_cast<char>(std::toupper(static_cast<unsigned char>(note[0])));
+  if (note.back() != '.') note.push_back('.');
+  return note;
+}
+
 }  // namespace
 
 std::string place_text(const Place& place) {
@@ -72,7 +81,7 @@ Site open_site(const Plan& plan) {
   site.middle.place.height_m = height_at_middle(ground);
   site.series =
       make_light(plan.light, site.middle.place, plan.site.clock, plan.light_options, plan.light_where);
-  site.notes = site.series.notes;
+  for (const std::string& note : site.series.notes) site.notes.push_back(sentence(note));
   note_clock(site.series, site.notes);
   site.notes.push_back("The sun and the sky are those of the middle of the map (" +
                        place_text(site.middle.place) + ").");
