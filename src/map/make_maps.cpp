@@ -13,23 +13,13 @@
 #include "map/open_terrain.h"
 #include "map/sight.h"
 #include "map/tile_solver.h"
+#include "map/tiles.h"
 #include "shade/terrain.h"
 #include "sunfall/error.h"
 #include "sunfall/map.h"
 
 namespace sunfall {
 namespace {
-
-std::vector<CellWindow> tiles_of(const GridFrame& frame, int size) {
-  std::vector<CellWindow> tiles;
-  for (int row = 0; row < frame.rows; row += size) {
-    for (int column = 0; column < frame.columns; column += size) {
-      tiles.push_back(
-          {column, row, std::min(size, frame.columns - column), std::min(size, frame.rows - row)});
-    }
-  }
-  return tiles;
-}
 
 void stop_if_asked(const Progress& progress) {
   if (progress.stop_requested()) {

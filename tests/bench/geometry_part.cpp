@@ -10,6 +10,7 @@
 #include "bench/horizon_march.h"
 #include "geo/geodesy.h"
 #include "map/layers.h"
+#include "map/tiles.h"
 #include "sunfall/map.h"
 
 namespace sunfall::bench {
@@ -20,17 +21,6 @@ constexpr unsigned kSeed = 20250621;
 bool inside(const CellWindow& window, CellIndex cell) {
   return cell.column >= window.column && cell.column < window.column + window.columns &&
          cell.row >= window.row && cell.row < window.row + window.rows;
-}
-
-std::vector<CellWindow> tiles_of(const GridFrame& frame, int size) {
-  std::vector<CellWindow> tiles;
-  for (int row = 0; row < frame.rows; row += size) {
-    for (int column = 0; column < frame.columns; column += size) {
-      tiles.push_back(
-          {column, row, std::min(size, frame.columns - column), std::min(size, frame.rows - row)});
-    }
-  }
-  return tiles;
 }
 
 void keep(const TileShares& shares, const TileLight& light, std::vector<CellLight>& cells) {
