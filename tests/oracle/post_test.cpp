@@ -11,7 +11,6 @@
 
 #include "geo/layer_writer.h"
 #include "light/series_checks.h"
-#include "map/loss_table.h"
 #include "map/scene.h"
 #include "oracle/comparison.h"
 
@@ -54,28 +53,27 @@ double variation(const std::vector<double>& around) {
   return sum;
 }
 
-// A look stands for the azimuths of its lines. Over the width of the post, looks that meet it are
-// counted right to within one; the beam's tables spread the sun's path over the lines beside it, which
-// moves light by up to one look more: two looks of light from below the post's top. Far horizons are
-// read between two lines of the sweep a cell apart, which moves each edge of the post by up to half a
-// cell. More would be a spoke.
+// The post's shade may be off by the light from below its top within two strips of azimuth: one for
+// the directions that meet it, counted right to within one strip, and one for the beam's tables, which
+// spread the sun's path over what lies beside. More would be a spoke. A strip is two of the dome's lines
+// (1.67 degrees at standard, 1 at fine) however many looks a sector gets; the blur from reading between
+// two lines of the sweep must find its room in it.
 double spoke_bound(const DomeLight& light, double radius_m, std::size_t month) {
+  constexpr int kStripLines = 2;
   const double rise = kHeight_m - kReceiver_m;
   const double sine = rise / std::hypot(rise, radius_m - kHalfWidth_m);
   double most = 0.0;
-  for (const Look& look : looks_of(light)) {
+  for (int first = 0; first < light.dome.lines(); first += kStripLines) {
     double below = 0.0;
-    for (int line = look.first_line; line < look.first_line + look.lines; ++line) {
+    for (int line = first; line < first + kStripLines; ++line) {
       for (int step = 0; step <= static_cast<int>(sine * light.dome.steps()); ++step) {
         const std::size_t at = light.index(line, step, month);
         below += light.beam.level[at] + light.sky.level[at];
       }
     }
-    const double width = 2.0 * std::numbers::pi * look.lines / light.dome.lines();
-    const double cell = 1.0 / radius_m;
-    most = std::max(most, below * (2.0 + cell / width));
+    most = std::max(most, below);
   }
-  return most / (light.beam.open[month] + light.sky.open[month]);
+  return 2.0 * most / (light.beam.open[month] + light.sky.open[month]);
 }
 
 class Post : public ::testing::Test {
