@@ -38,6 +38,18 @@ struct Period {
   std::chrono::month_day to;
 };
 std::vector<Period> month_periods();
+bool holds(const Period& period, std::chrono::month_day day);
+
+// The open field of one calendar year of a series: the mean day's photons on a level plane per period,
+// mol m-2 d-1, and the number of days behind it. A period's days are those of the year itself, also where
+// it runs over New Year. Without a day in the year (29 February) its light is missing (NaN).
+struct OpenYear {
+  int year = 0;
+  std::vector<double> beam;
+  std::vector<double> sky;
+  std::vector<int> days;
+};
+std::vector<OpenYear> open_years(const LightSeries& series, const std::vector<Period>& periods);
 
 // For each period, the mean daily photons (mol m-2 d-1) that arrive in the open from each line
 // and step. Arrays are [line][step][period], flat.
@@ -53,6 +65,7 @@ struct DomeLight {
   std::vector<Period> periods;
   Part beam;
   Part sky;
+  std::vector<OpenYear> years;  // of the series, in their order
 
   std::size_t index(int line, int step, std::size_t period) const {
     return (static_cast<std::size_t>(line) * static_cast<std::size_t>(dome.steps()) +

@@ -1,6 +1,7 @@
 #pragma once
 // The main job: from a plan to light maps in a run folder.
 
+#include <array>
 #include <filesystem>
 #include <map>
 #include <string>
@@ -14,16 +15,19 @@
 namespace sunfall {
 
 struct MapOptions {
-  int jobs = 0;                // worker threads; 0 for as many as the machine has
-  int tile_cells = 512;        // side of a tile
-  bool reverse_tiles = false;  // last tile first; the result does not depend on it
+  int jobs = 0;                               // worker threads; 0 for as many as the machine has
+  int tile_cells = 512;                       // side of a tile
+  bool reverse_tiles = false;                 // last tile first; the result does not depend on it
+  std::vector<std::vector<CellIndex>> plots;  // cells of each plot, sorted by row, then column
 };
 
 // The open field: what falls on level ground with nothing around it.
 struct OpenField {
   std::vector<double> beam;  // mol m-2 d-1 per period
   std::vector<double> sky;
-  double year = 0.0;  // beam and sky over the year's mean day
+  double year = 0.0;                    // beam and sky over the year's mean day
+  std::array<double, 12> month_part{};  // of the series' days: what a month counts for in the year
+  std::vector<OpenYear> years;          // each year alone
 };
 
 struct MapLayer {
@@ -37,7 +41,8 @@ struct MapResult {
   std::vector<MapLayer> layers;
   std::vector<Period> periods;
   OpenField open;
-  double valid_fraction = 0.0;  // cells with a value
+  std::vector<std::vector<double>> plot_shares;  // [plot][beam of every period, then sky]: mean of its cells
+  double valid_fraction = 0.0;                   // cells with a value
   double mean_sight = 0.0;
   std::map<std::string, double> seconds;  // per stage
 };

@@ -38,7 +38,9 @@ struct DomePlan {
 };
 
 struct OutputPlan {
-  bool shares = false;
+  bool shares = false;            // share-beam-MM.tif and share-sky-MM.tif
+  bool percentiles = false;       // dli-MM-p10.tif, -p50 and -p90 over the years of a series
+  std::string percentiles_where;  // "farm.toml:30 output.percentiles", for faults found later
 };
 
 struct Plan {

@@ -11,7 +11,7 @@ namespace {
 namespace fs = std::filesystem;
 
 // Not every run makes these, and the summary does not list them.
-constexpr const char* kCompanions[] = {"plots.csv", "plots.gpkg", "page.html"};
+constexpr const char* kCompanions[] = {"plots.csv", "plots.gpkg", "years.csv", "page.html"};
 
 // A summary may come from anywhere: only plain names of rasters are taken from it.
 bool is_layer_name(const std::string& name) {

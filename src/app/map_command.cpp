@@ -14,6 +14,7 @@
 #include "app/run_folder.h"
 #include "app/terminal_progress.h"
 #include "map/site.h"
+#include "map/years.h"
 #include "report/write_run.h"
 #include "sunfall/map.h"
 
@@ -29,6 +30,13 @@ void print_months(const MapResult& maps) {
   fmt::print("Open field, mol m-2 d-1:");
   for (std::size_t m = 0; m < 12; ++m) fmt::print(" {:.1f}", maps.open.beam[m] + maps.open.sky[m]);
   fmt::print("; year {:.1f}\n", maps.open.year);
+  if (!has_percentiles(maps.open)) return;
+  const std::vector<YearPercentiles> years = percentiles_of(maps.open);
+  for (std::size_t i = 0; i < kYearPercents.size(); ++i) {
+    fmt::print("  P{} over {} years:      ", kYearPercents[i], maps.open.years.size());
+    for (std::size_t m = 0; m < 12; ++m) fmt::print(" {:.1f}", years[m][i]);
+    fmt::print("; year {:.1f}\n", years.back()[i]);
+  }
 }
 
 // Cells without a value are easily overlooked: a whole map of them may mean a surface that counts its
@@ -51,6 +59,7 @@ void run_map(const MapCommand& command) {
   const DomeLight light = dome_light_of(plan, site);
   MapOptions options;
   options.jobs = command.common.jobs;
+  if (!plots.empty()) options.plots = cells_of_plots(plots, site.frame);
   // Left to itself, TBB keeps to the number of cores, and says so on standard error.
   std::optional<tbb::global_control> workers;
   if (options.jobs > 0) {
@@ -58,7 +67,7 @@ void run_map(const MapCommand& command) {
   }
   const MapResult maps =
       make_maps(plan, light, provenance_of(plan, site), folder.staging(), options, progress);
-  write_run(plan, site, maps, plots, folder.staging(), options.jobs, progress);
+  write_run(plan, site, maps, plots, folder.staging(), options, progress);
   folder.publish("summary.json", files_of_former_run(out));
   if (command.common.json) {
     const nlohmann::ordered_json line{{"folder", out.string()},

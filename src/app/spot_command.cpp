@@ -15,6 +15,7 @@
 #include "map/open_terrain.h"
 #include "map/site.h"
 #include "map/spot.h"
+#include "map/years.h"
 #include "report/spot_report.h"
 #include "report/write_run.h"
 #include "sunfall/error.h"
@@ -66,10 +67,32 @@ std::chrono::month_day day_of(const std::string& text) {
   return out;
 }
 
-void require_day_of_year(const std::string& text, std::chrono::month_day day, int year) {
-  if ((std::chrono::year{year} / day).ok()) return;
-  throw Error(ErrorKind::plan, {fmt::format("there is no such day in {}, the plan's light.year", year),
-                                "--day", text, "Give another day, or a leap year"});
+void require_day_of_years(const std::string& text, std::chrono::month_day day, const LightSeries& series) {
+  for (int y = 0; y < series.years; ++y) {
+    if (((series.first_year + std::chrono::years{y}) / day).ok()) return;
+  }
+  throw Error(ErrorKind::plan,
+              {fmt::format("there is no such day in {}, the light's year", int{series.first_year}), "--day",
+               text, "Give another day, or light of a leap year"});
+}
+
+void print_years(const Spot& spot) {
+  const std::vector<YearPercentiles> here = percentiles_of(spot.open, spot.shares);
+  const std::vector<YearPercentiles> open = percentiles_of(spot.open);
+  fmt::print("\n{:<22} {:^26} {:^26}\n", fmt::format("Over {} years", spot.open.years.size()), "here",
+             "open field");
+  fmt::print("{:<22}", "");
+  for (int side = 0; side < 2; ++side) {
+    for (const int percent : kYearPercents) fmt::print(" {:>8}", fmt::format("P{}", percent));
+  }
+  fmt::print("\n");
+  for (std::size_t p = 0; p < here.size(); ++p) {
+    fmt::print("{:<22}", p < spot.periods.size() ? period_title(spot.periods[p]) : "Year");
+    for (const YearPercentiles& side : {here[p], open[p]}) {
+      for (const double value : side) fmt::print(" {:8.2f}", value);
+    }
+    fmt::print("\n");
+  }
 }
 
 void print_spot(const Plan& plan, const Spot& spot, const std::filesystem::path& out) {
@@ -85,6 +108,7 @@ void print_spot(const Plan& plan, const Spot& spot, const std::filesystem::path&
   }
   fmt::print("{:<22} {:>8} {:>8} {:8.2f} {:10.2f} {:6.1f} %\n", "Year", "", "", spot.year, spot.open.year,
              100.0 * spot.year / spot.open.year);
+  if (has_percentiles(spot.open)) print_years(spot);
   if (plan.site.receiver_plane == ReceiverPlane::ground) {
     fmt::print("\nThe months are in the plane of the ground; the day's curve is for a level receiver.\n");
   }
@@ -100,19 +124,30 @@ nlohmann::ordered_json as_json(const Spot& spot, const std::filesystem::path& ou
                        {"open_beam", spot.open.beam[p]},
                        {"open_sky", spot.open.sky[p]}});
   }
+  // By period, the year last: P10, P50 and P90 over the years.
+  nlohmann::ordered_json over_years = nlohmann::ordered_json::array();
+  if (has_percentiles(spot.open)) {
+    const std::vector<YearPercentiles> here = percentiles_of(spot.open, spot.shares);
+    const std::vector<YearPercentiles> open = percentiles_of(spot.open);
+    for (std::size_t p = 0; p < here.size(); ++p) {
+      over_years.push_back({{"period", p < spot.periods.size() ? spot.periods[p].name : "year"},
+                            {"dli", here[p]},
+                            {"open_dli", open[p]}});
+    }
+  }
   std::vector<double> horizon;
   for (const Angle angle : spot.horizon) horizon.push_back(std::round(angle.degrees() * 100.0) / 100.0);
   return {{"east", spot.centre.east}, {"north", spot.centre.north},      {"ground_m", spot.ground_m},
           {"dli_year", spot.year},    {"open_dli_year", spot.open.year}, {"periods", periods},
-          {"horizon_deg", horizon},   {"folder", out.string()}};
+          {"over_years", over_years}, {"horizon_deg", horizon},          {"folder", out.string()}};
 }
 
 void run_spot(const SpotCommand& command) {
   const MapPoint point = point_of(command.at);
   const std::chrono::month_day day = day_of(command.day);
   const Plan plan = plan_of(command.common);
-  require_day_of_year(command.day, day, plan.light_options.year);
   const Site site = site_of(plan);
+  require_day_of_years(command.day, day, site.series);
   TerminalProgress progress(command.common.quiet || command.common.json);
   const Terrain terrain(open_terrain(plan.site), progress);
   const DomeLight light = dome_light_of(plan, site);

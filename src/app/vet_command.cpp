@@ -52,7 +52,7 @@ Estimate estimate(const Plan& plan, const Terrain& terrain, const DomeLight& lig
 
 nlohmann::ordered_json as_json(const Plan& plan, const Site& site, const Terrain& terrain,
                                const DomeLight& light, const Estimate& cost, std::size_t plots) {
-  const OpenField open = open_field(light, plan.light_options.year);
+  const OpenField open = open_field(light);
   std::vector<double> months;
   for (std::size_t m = 0; m < 12; ++m) months.push_back(open.beam[m] + open.sky[m]);
   return {{"plan", plan.name},
@@ -83,7 +83,7 @@ nlohmann::ordered_json as_json(const Plan& plan, const Site& site, const Terrain
 void print_text(const Plan& plan, const Site& site, const Terrain& terrain, const DomeLight& light,
                 const Estimate& cost, std::size_t plots) {
   const GridFrame& frame = site.frame;
-  const OpenField open = open_field(light, plan.light_options.year);
+  const OpenField open = open_field(light);
   fmt::print("{}\n\n", plan.name);
   fmt::print("Grid       {} × {} cells of {:g} m, {}\n", frame.columns, frame.rows, frame.cell_m,
              crs_name(frame));

@@ -13,6 +13,11 @@ Dome Dome::of(DomeQuality quality) {
   return {};
 }
 
+bool holds(const Period& period, std::chrono::month_day day) {
+  if (period.from <= period.to) return period.from <= day && day <= period.to;
+  return day >= period.from || day <= period.to;
+}
+
 std::vector<Period> month_periods() {
   using std::chrono::day, std::chrono::last, std::chrono::month;
   std::vector<Period> periods;

@@ -12,11 +12,6 @@ namespace {
 
 using std::chrono::month_day;
 
-bool contains(const Period& period, month_day day) {
-  if (period.from <= period.to) return period.from <= day && day <= period.to;
-  return day >= period.from || day <= period.to;
-}
-
 // For every calendar day of the year, the periods that hold it.
 class PeriodsOfDay {
  public:
@@ -27,7 +22,7 @@ class PeriodsOfDay {
     day_ = day;
     found_.clear();
     for (std::size_t p = 0; p < periods_.size(); ++p) {
-      if (contains(periods_[p], day)) found_.push_back(p);
+      if (holds(periods_[p], day)) found_.push_back(p);
     }
     return found_;
   }
@@ -189,6 +184,7 @@ DomeLight make_dome_light(const LightSeries& series, const Dome& dome, SkyModel 
   DomeLight light;
   light.dome = dome;
   light.periods = periods;
+  light.years = open_years(series, periods);
   const std::size_t size = static_cast<std::size_t>(dome.lines()) * dome.steps() * periods.size();
   for (DomeLight::Part* part : {&light.beam, &light.sky}) {
     part->level.assign(size, 0.0);

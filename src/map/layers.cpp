@@ -6,6 +6,7 @@
 #include <array>
 #include <cmath>
 
+#include "core/lowest_month.h"
 #include "core/month_names.h"
 
 namespace sunfall {
@@ -14,15 +15,6 @@ namespace {
 constexpr double kDliQuantum = 1.0 / 128.0;
 constexpr double kShareQuantum = 1.0 / 4096.0;
 constexpr const char* kDliUnit = "mol m-2 d-1";
-
-std::array<double, 12> month_lengths(int year) {
-  std::array<double, 12> days{};
-  for (unsigned m = 1; m <= 12; ++m) {
-    const auto end = std::chrono::year{year} / std::chrono::month{m} / std::chrono::last;
-    days[m - 1] = static_cast<double>(static_cast<unsigned>(end.day()));
-  }
-  return days;
-}
 
 std::string day_text(std::chrono::month_day day) {
   const std::string month = kMonthNames[static_cast<unsigned>(day.month()) - 1];
@@ -33,13 +25,9 @@ std::string day_text(std::chrono::month_day day) {
 void lowest(const TileLight& light, std::vector<float>* dli, std::vector<float>* month) {
   const std::size_t cells = light.year.size();
   for (std::size_t cell = 0; cell < cells; ++cell) {
-    std::size_t least = 0;
-    for (std::size_t m = 1; m < 12; ++m) {
-      if (light.dli[m][cell] < light.dli[least][cell]) least = m;
-    }
-    const bool missing = std::isnan(light.dli[0][cell]);
-    if (dli) (*dli)[cell] = light.dli[least][cell];
-    if (month) (*month)[cell] = missing ? kMissing : static_cast<float>(least + 1);
+    const int least = lowest_month_of([&](int m) { return light.dli[static_cast<std::size_t>(m)][cell]; });
+    if (dli) (*dli)[cell] = least < 0 ? kMissing : light.dli[static_cast<std::size_t>(least)][cell];
+    if (month) (*month)[cell] = least < 0 ? kMissing : static_cast<float>(least + 1);
   }
 }
 
@@ -59,31 +47,15 @@ std::string period_title(const Period& period) {
   return fmt::format("{} ({} to {})", period.name, day_text(period.from), day_text(period.to));
 }
 
-OpenField open_field(const DomeLight& light, int year) {
-  OpenField open{light.beam.open, light.sky.open, 0.0};
-  const auto days = month_lengths(year);
-  double total = 0.0;
-  for (std::size_t m = 0; m < 12; ++m) {
-    open.year += days[m] * (open.beam[m] + open.sky[m]);
-    total += days[m];
-  }
-  open.year /= total;
-  return open;
-}
-
-TileLight light_of(const TileShares& shares, const OpenField& open, const std::vector<Period>& periods,
-                   int year) {
+TileLight light_of(const TileShares& shares, const OpenField& open) {
   TileLight light;
   light.shares = &shares;
-  const std::size_t cells = shares.usable.size(), count = periods.size();
-  const auto days = month_lengths(year);
-  double year_days = 0.0;
-  for (const double d : days) year_days += d;
+  const std::size_t cells = shares.usable.size(), count = open.beam.size();
   light.dli.assign(count, std::vector<float>(cells, kMissing));
   light.year.assign(cells, kMissing);
   std::vector<float> beam(open.beam.begin(), open.beam.end()), sky(open.sky.begin(), open.sky.end());
   std::array<float, 12> weight{};
-  for (std::size_t m = 0; m < 12; ++m) weight[m] = static_cast<float>(days[m] / year_days);
+  for (std::size_t m = 0; m < 12; ++m) weight[m] = static_cast<float>(open.month_part[m]);
   for (std::size_t cell = 0; cell < cells; ++cell) {
     if (!shares.usable[cell]) continue;
     const float* share = shares.of(cell);
@@ -120,6 +92,18 @@ std::vector<LayerRecipe> layers_of(const Plan& plan, const std::vector<Period>& 
       [](const TileLight& light, std::vector<float>& values) { lowest(light, nullptr, &values); });
   add({"sight.tif", "How much of the horizon the inputs cover, 1 = all", "1", kShareQuantum},
       [](const TileLight& light, std::vector<float>& values) { values = light.sight; });
+  if (plan.output.percentiles) {
+    for (std::size_t i = 0; i < kYearPercents.size(); ++i) {
+      for (std::size_t p = 0; p <= periods.size(); ++p) {
+        const bool year = p == periods.size();
+        add({fmt::format("dli-{}-p{}.tif", year ? "year" : periods[p].name, kYearPercents[i]),
+             fmt::format("P{} over the years of the daily light integral, {}", kYearPercents[i],
+                         year ? "mean of the year" : period_title(periods[p])),
+             kDliUnit, kDliQuantum},
+            [i, p](const TileLight& light, std::vector<float>& values) { values = light.over_years[i][p]; });
+      }
+    }
+  }
   if (!plan.output.shares) return layers;
   for (const bool beam : {true, false}) {
     for (std::size_t p = 0; p < periods.size(); ++p) {

@@ -7,6 +7,7 @@
 
 #include "geo/layer_writer.h"
 #include "map/tile_solver.h"
+#include "map/years.h"
 #include "sunfall/map.h"
 #include "sunfall/plan.h"
 
@@ -19,9 +20,9 @@ struct TileLight {
   std::vector<std::vector<float>> dli;  // [period][cell]
   std::vector<float> year;
   std::vector<float> sight;
+  TilePercentiles over_years;  // where they are wanted, else empty
 };
-TileLight light_of(const TileShares& shares, const OpenField& open, const std::vector<Period>& periods,
-                   int year);
+TileLight light_of(const TileShares& shares, const OpenField& open);
 
 struct LayerRecipe {
   LayerSpec spec;
@@ -29,8 +30,6 @@ struct LayerRecipe {
 };
 std::vector<LayerRecipe> layers_of(const Plan& plan, const std::vector<Period>& periods,
                                    const std::map<std::string, std::string>& provenance);
-
-OpenField open_field(const DomeLight& light, int year);
 
 // A period for people: "January", or "season (15 Apr to 30 Sep)".
 std::string period_title(const Period& period);

@@ -11,6 +11,7 @@
 #include "geo/layer_writer.h"
 #include "map/layers.h"
 #include "map/open_terrain.h"
+#include "map/plot_shares.h"
 #include "map/sight.h"
 #include "map/tile_solver.h"
 #include "map/tiles.h"
@@ -57,7 +58,7 @@ MapResult make_maps(const Plan& plan, const DomeLight& light,
   const GridFrame& frame = terrain.frame();
   result.frame = frame;
   result.periods = light.periods;
-  result.open = open_field(light, plan.light_options.year);
+  result.open = open_field(light);
   const TileSolver solver(terrain, light, plan.site.receiver_plane);
   std::vector<std::unique_ptr<OpenLayer>> layers;
   for (LayerRecipe& recipe : layers_of(plan, light.periods, provenance)) {
@@ -73,6 +74,7 @@ MapResult make_maps(const Plan& plan, const DomeLight& light,
     std::size_t usable = 0;
   };
   std::vector<Sum> sums(tiles.size());  // by tile, so that totals add up in one order
+  PlotShares plot_shares(options.plots, tiles.size());
   tbb::enumerable_thread_specific<TileRoom> rooms;
   on_all_cores(options.jobs, tiles.size(), [&](std::size_t turn) {
     stop_if_asked(progress);
@@ -82,7 +84,9 @@ MapResult make_maps(const Plan& plan, const DomeLight& light,
     const Angle convergence = geo_place(frame, frame.centre(middle)).convergence;
     const TerrainTile tile = terrain.tile(window);
     const TileShares shares = solver.solve(tile, convergence, rooms.local());
-    TileLight tile_light = light_of(shares, result.open, light.periods, plan.light_options.year);
+    TileLight tile_light = light_of(shares, result.open);
+    if (plan.output.percentiles) tile_light.over_years = percentiles_of(result.open, shares);
+    plot_shares.add(i, shares);
     tile_light.sight = tile_sight(tile, frame.cell_m);
     for (std::size_t cell = 0; cell < shares.usable.size(); ++cell) {
       sums[i].sight += tile_light.sight[cell];
@@ -102,6 +106,7 @@ MapResult make_maps(const Plan& plan, const DomeLight& light,
     usable += sum.usable;
   }
   result.valid_fraction = double(usable) / double(frame.size());
+  result.plot_shares = plot_shares.means();
   result.seconds["light"] = solving.seconds();
 
   Stopwatch writing;

@@ -2,6 +2,7 @@
 
 #include <fmt/format.h>
 
+#include <algorithm>
 #include <cctype>
 #include <cmath>
 
@@ -10,7 +11,9 @@
 #include "geo/map_scale.h"
 #include "geo/raster_source.h"
 #include "geo/surface_check.h"
+#include "map/years.h"
 #include "sun/ephemeris.h"
+#include "sunfall/error.h"
 #include "sunfall/version.h"
 
 namespace sunfall {
@@ -56,6 +59,30 @@ void note_clock(const LightSeries& series, std::vector<std::string>& notes) {
                   clock_h, std::abs(ahead_h), ahead_h > 0 ? "ahead of" : "behind"));
 }
 
+// What can be said over the years of a series, and what only seems so.
+void check_years(const Plan& plan, Site& site) {
+  const std::vector<OpenYear> years = open_years(site.series, plan.periods);
+  for (std::size_t p = 0; p < plan.periods.size(); ++p) {
+    if (std::any_of(years.begin(), years.end(), [p](const OpenYear& year) { return year.days[p] > 0; }))
+      continue;
+    throw Error(ErrorKind::plan,
+                {"the range holds no day of the light's years", plan.file.string() + " periods",
+                 plan.periods[p].name, "Widen the range, or give light of a leap year"});
+  }
+  if (plan.output.percentiles) require_years(years, plan.periods, plan.output.percentiles_where);
+  const auto count = static_cast<int>(years.size());
+  if (count > 1 && count < kLeastYears) {
+    site.notes.push_back(
+        fmt::format("Two years of light give a mean, and no percentiles over the years: these take {} years.",
+                    kLeastYears));
+  } else if (count >= kLeastYears && count < kEnoughYears) {
+    site.notes.push_back(
+        fmt::format("Percentiles over the years come from {} years only: P10 and P90 lie close "
+                    "to the darkest and the brightest of them. {} years or more tell better.",
+                    count, kEnoughYears));
+  }
+}
+
 // A note as a sentence of its own.
 std::string sentence(std::string note) {
   if (note.empty()) return note;
@@ -83,6 +110,7 @@ Site open_site(const Plan& plan) {
       make_light(plan.light, site.middle.place, plan.site.clock, plan.light_options, plan.light_where);
   for (const std::string& note : site.series.notes) site.notes.push_back(sentence(note));
   note_clock(site.series, site.notes);
+  check_years(plan, site);
   site.notes.push_back("The sun and the sky are those of the middle of the map (" +
                        place_text(site.middle.place) + ").");
   if (plan.site.far_ground) {

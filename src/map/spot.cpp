@@ -121,14 +121,15 @@ Spot look_at_spot(const Plan& plan, const Terrain& terrain, const DomeLight& lig
     refuse("the place is under something solid", point,
            "Choose a place that is not covered in the surface raster");
   }
-  spot.open = open_field(light, plan.light_options.year);
+  spot.open = open_field(light);
   spot.periods = light.periods;
   const std::size_t periods = light.periods.size();
   for (std::size_t p = 0; p < periods; ++p) {
     spot.beam.push_back(spot.open.beam[p] * shares.of(cell)[p]);
     spot.sky.push_back(spot.open.sky[p] * shares.of(cell)[periods + p]);
   }
-  spot.year = light_of(shares, spot.open, light.periods, plan.light_options.year).year[cell];
+  spot.year = light_of(shares, spot.open).year[cell];
+  spot.shares.assign(shares.of(cell), shares.of(cell) + shares.columns);
   spot.horizon = horizon_of(terrain, spot.cell, geo_place(frame, spot.centre).convergence);
   return spot;
 }

@@ -29,6 +29,7 @@ struct Spot {
   std::vector<double> beam;  // DLI at the place, per period
   std::vector<double> sky;
   double year = 0.0;
+  std::vector<double> shares;  // beam of every period, then sky
   std::vector<Angle> horizon;  // at kSpotAzimuths equal azimuths, the first at true north; ≥ 0
 };
 inline constexpr int kSpotAzimuths = 720;

@@ -1,6 +1,7 @@
 #include "plan/periods_table.h"
 
 #include <algorithm>
+#include <regex>
 #include <set>
 
 #include "plan/words.h"
@@ -20,6 +21,12 @@ const char* const kNamedRange = "a named range { from = \"MM-DD\", to = \"MM-DD\
 const std::set<std::string>& taken_names() {
   static const std::set<std::string> names = {"year", "lowest", "lowest-month"};
   return names;
+}
+
+// dli-<name>-p10.tif and the like belong to the period without the ending.
+bool is_taken(const std::string& name) {
+  static const std::regex percentile(".*-p[0-9]+");
+  return taken_names().contains(name) || std::regex_match(name, percentile);
 }
 
 bool is_name(const std::string& name) {
@@ -43,8 +50,8 @@ Period read_range(TableReader& periods, const std::string& name, int year) {
     periods.refuse(name, "a range's name must be short, plain letters", in_quotes(name),
                    "Use a to z, 0 to 9, _ and -, beginning with a letter, at most 40 in all");
   }
-  if (taken_names().contains(name)) {
-    periods.refuse(name, "the name belongs to a layer that every run writes", in_quotes(name),
+  if (is_taken(name)) {
+    periods.refuse(name, "the name belongs to a layer of another kind", in_quotes(name),
                    "Choose another name");
   }
   const Period period{name, range.day(kFrom), range.day(kTo)};
@@ -72,9 +79,10 @@ void read_periods_table(TableReader& table, Plan& plan) {
                  "Keep to " + std::to_string(kMostRanges) + " in a plan");
   }
   plan.periods = month_periods();
-  for (const std::string& name : names) {
-    plan.periods.push_back(read_range(table, name, plan.light_options.year));
-  }
+  // A record's own years are known only once it is read: till then any may be a leap year.
+  constexpr int kLeapYear = 2024;
+  const int year = files_of(plan.light).empty() ? plan.light_options.year : kLeapYear;
+  for (const std::string& name : names) plan.periods.push_back(read_range(table, name, year));
 }
 
 }  // namespace sunfall

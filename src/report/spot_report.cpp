@@ -10,6 +10,7 @@
 #include "report/sun_path.h"
 #include "report/tables.h"
 #include "report/write_run.h"
+#include "report/years_table.h"
 
 namespace sunfall {
 namespace {
@@ -65,12 +66,23 @@ SunPathPicture picture_of(const Plan& plan, const Site& site, const Spot& spot) 
 }
 
 void write_months(const Spot& spot, const std::filesystem::path& file) {
-  CsvTable table({"period", "beam_mol_m2_d", "sky_mol_m2_d", "total_mol_m2_d", "open_beam_mol_m2_d",
-                  "open_sky_mol_m2_d"});
+  std::vector<std::string> header{"period",         "beam_mol_m2_d",      "sky_mol_m2_d",
+                                  "total_mol_m2_d", "open_beam_mol_m2_d", "open_sky_mol_m2_d"};
+  const bool years = has_percentiles(spot.open);
+  if (years) {
+    for (const std::string& heading : percentile_headings()) header.push_back("total " + heading);
+  }
+  CsvTable table(header);
+  const std::vector<YearPercentiles> over_years = percentiles_of(spot.open, spot.shares);
   for (std::size_t p = 0; p < spot.periods.size(); ++p) {
-    table.add({spot.periods[p].name, csv_number(spot.beam[p], 3), csv_number(spot.sky[p], 3),
-               csv_number(spot.beam[p] + spot.sky[p], 3), csv_number(spot.open.beam[p], 3),
-               csv_number(spot.open.sky[p], 3)});
+    std::vector<std::string> fields{spot.periods[p].name,
+                                    csv_number(spot.beam[p], 3),
+                                    csv_number(spot.sky[p], 3),
+                                    csv_number(spot.beam[p] + spot.sky[p], 3),
+                                    csv_number(spot.open.beam[p], 3),
+                                    csv_number(spot.open.sky[p], 3)};
+    if (years) add_percentiles(fields, over_years[p]);
+    table.add(fields);
   }
   table.write(file);
 }
@@ -83,6 +95,7 @@ void write_spot(const Plan& plan, const Site& site, const Spot& spot, const std:
   draw_sun_path(folder / "sun-path.png", picture);
   draw_sun_path(folder / "sun-path.svg", picture);
   write_months(spot, folder / "months.csv");
+  if (spot.open.years.size() > 1) write_years_csv(folder / "years.csv", spot.open, spot.periods, spot.shares);
   std::vector<DayStep> rows;
   for (const SpotStep& step : steps) {
     rows.push_back({step.begin, step.sun_azimuth.from_true_north.degrees(), step.sun_elevation.degrees(),

@@ -11,7 +11,8 @@
 
 namespace sunfall {
 
-// Writes sun-path.png, sun-path.svg, months.csv and day-<day>.csv into `folder`.
+// Writes sun-path.png, sun-path.svg, months.csv, day-<day>.csv and, of several years, years.csv into
+// `folder`.
 void write_spot(const Plan& plan, const Site& site, const Spot& spot, const std::vector<SpotStep>& steps,
                 const std::string& day, const std::filesystem::path& folder);
 

@@ -5,14 +5,6 @@
 
 namespace sunfall {
 
-double quantile(const std::vector<float>& sorted, double share) {
-  const double rank = share * static_cast<double>(sorted.size() - 1);
-  const auto below = static_cast<std::size_t>(rank);
-  const std::size_t above = std::min(below + 1, sorted.size() - 1);
-  return std::lerp(static_cast<double>(sorted[below]), static_cast<double>(sorted[above]),
-                   rank - static_cast<double>(below));
-}
-
 PlotStatistics statistics(std::vector<float> values) {
   std::erase_if(values, [](float value) { return !std::isfinite(value); });
   PlotStatistics result;

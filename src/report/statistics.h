@@ -4,6 +4,7 @@
 #include <cstddef>
 #include <vector>
 
+#include "core/quantile.h"
 #include "sunfall/grid.h"
 
 namespace sunfall {
@@ -19,12 +20,8 @@ struct PlotStatistics {
   double cv = kMissing;
 };
 
-// Missing values are left out; nothing left gives missing statistics. P10 is Hyndman and Fan's (1996)
-// definition 7: linear between the order statistics around rank (n - 1) 0.1 (the first has rank 0).
+// Missing values are left out; nothing left gives missing statistics. P10 is that of core/quantile.h.
 // The order of the values does not matter, not even to the last bit.
 PlotStatistics statistics(std::vector<float> values);
-
-// `share` from 0 to 1; `sorted` ascending, not empty.
-double quantile(const std::vector<float>& sorted, double share);
 
 }  // namespace sunfall

@@ -3,6 +3,7 @@
 #include <cmath>
 #include <nlohmann/json.hpp>
 
+#include "core/lowest_month.h"
 #include "core/whole_file.h"
 
 namespace sunfall {
@@ -38,6 +39,34 @@ Json layers_json(const Summary& summary) {
   return list;
 }
 
+// Adds dli_month_p10 to dli_year_p90 under "over_years".
+void add_over_years(Json& json, const std::vector<YearPercentiles>& over_years) {
+  if (over_years.empty()) return;
+  Json& out = json["over_years"];
+  for (std::size_t i = 0; i < kYearPercents.size(); ++i) {
+    std::array<double, 12> months{};
+    for (std::size_t m = 0; m < 12; ++m) months[m] = over_years[m][i];
+    const std::string percent = "_p" + std::to_string(kYearPercents[i]);
+    out["dli_month" + percent] = numbers(months);
+    out["dli_year" + percent] = number(over_years.back()[i]);
+  }
+}
+
+Json open_field_json(const Summary& summary) {
+  Json json{{"dli_month", numbers(summary.open_field.dli_month)},
+            {"dli_year", number(summary.open_field.dli_year)},
+            {"beam_part_month", numbers(summary.open_field.beam_part_month)}};
+  add_over_years(json, summary.open_field.over_years);
+  if (!summary.open_field.years.empty()) json["years"] = Json::array();
+  for (const Summary::YearLight& year : summary.open_field.years) {
+    json["years"].push_back({{"year", year.year},
+                             {"beam_month", numbers(year.beam_month)},
+                             {"sky_month", numbers(year.sky_month)},
+                             {"dli_year", number(year.dli_year)}});
+  }
+  return json;
+}
+
 Json plots_json(const Summary& summary) {
   Json list = Json::array();
   for (const Summary::PlotLight& plot : summary.plots) {
@@ -46,6 +75,7 @@ Json plots_json(const Summary& summary) {
                     {"dli_month_mean", numbers(plot.dli_month_mean)},
                     {"dli_month_p10", numbers(plot.dli_month_p10)},
                     {"lowest_month", plot.lowest_month > 0 ? Json(plot.lowest_month) : Json(nullptr)}});
+    add_over_years(list.back(), plot.over_years);
   }
   return list;
 }
@@ -53,12 +83,7 @@ Json plots_json(const Summary& summary) {
 }  // namespace
 
 int lowest_month(const std::array<double, 12>& by_month) {
-  int lowest = 0;
-  for (int month = 1; month <= 12; ++month) {
-    const double value = by_month[month - 1];
-    if (std::isfinite(value) && (lowest == 0 || value < by_month[lowest - 1])) lowest = month;
-  }
-  return lowest;
+  return 1 + lowest_month_of([&](int m) { return by_month[static_cast<std::size_t>(m)]; });
 }
 
 std::string summary_json(const Summary& summary) {
@@ -73,9 +98,7 @@ std::string summary_json(const Summary& summary) {
                    {"is_ceiling", summary.light.is_ceiling},
                    {"umol_per_joule", number(summary.light.umol_per_joule)}};
   json["dome"] = {{"sectors", summary.dome.sectors}, {"bands", summary.dome.bands}};
-  json["open_field"] = {{"dli_month", numbers(summary.open_field.dli_month)},
-                        {"dli_year", number(summary.open_field.dli_year)},
-                        {"beam_part_month", numbers(summary.open_field.beam_part_month)}};
+  json["open_field"] = open_field_json(summary);
   json["grid"] = {{"columns", summary.grid.columns},
                   {"rows", summary.grid.rows},
                   {"cell_m", number(summary.grid.cell_m)},

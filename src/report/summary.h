@@ -8,6 +8,7 @@
 #include <vector>
 
 #include "core/fingerprint.h"
+#include "map/years.h"
 #include "sunfall/grid.h"
 
 namespace sunfall {
@@ -23,12 +24,19 @@ struct Summary {
     std::string unit;
     Fingerprint print;
   };
+  struct YearLight {
+    int year = 0;
+    std::array<double, 12> beam_month{};
+    std::array<double, 12> sky_month{};
+    double dli_year = kMissing;
+  };
   struct PlotLight {
     std::string id;
     double area_m2 = 0.0;
     std::array<double, 12> dli_month_mean{};
     std::array<double, 12> dli_month_p10{};
-    int lowest_month = 0;  // 1 to 12: the month of the lowest mean; 0 where there is none
+    int lowest_month = 0;                     // 1 to 12: the month of the lowest mean; 0 where there is none
+    std::vector<YearPercentiles> over_years;  // of the mean, the months and last the year; or empty
   };
 
   std::string plan;
@@ -52,6 +60,8 @@ struct Summary {
     std::array<double, 12> dli_month{};
     double dli_year = kMissing;
     std::array<double, 12> beam_part_month{};
+    std::vector<YearLight> years;             // empty for one year
+    std::vector<YearPercentiles> over_years;  // the months and last the year; or empty
   } open_field;
   struct {
     int columns = 0;
@@ -65,7 +75,7 @@ struct Summary {
   std::vector<std::string> notes;                         // every assumption made for the user
 };
 
-// 1 to 12, the first of equals; 0 where all are missing.
+// 1 to 12, of equals as core/lowest_month.h; 0 where all are missing.
 int lowest_month(const std::array<double, 12>& by_month);
 
 std::string summary_json(const Summary& summary);

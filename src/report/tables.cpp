@@ -7,6 +7,7 @@
 #include <cstdlib>
 
 #include "core/whole_file.h"
+#include "report/years_table.h"
 
 namespace sunfall {
 namespace {
@@ -63,15 +64,35 @@ std::string csv_number(double value, int decimals) {
 
 void write_plots_csv(const std::filesystem::path& file, const std::vector<PlotRow>& plots,
                      const std::vector<std::string>& periods) {
-  CsvTable table({"plot", "crop", "period", "area (m2)", "mean DLI (mol m-2 d-1)", "P10 DLI (mol m-2 d-1)",
-                  "min DLI (mol m-2 d-1)", "max DLI (mol m-2 d-1)", "CV (1)"});
+  std::vector<std::string> header{"plot",
+                                  "crop",
+                                  "period",
+                                  "area (m2)",
+                                  "mean DLI (mol m-2 d-1)",
+                                  "P10 DLI (mol m-2 d-1)",
+                                  "min DLI (mol m-2 d-1)",
+                                  "max DLI (mol m-2 d-1)",
+                                  "CV (1)"};
+  const bool years = !plots.empty() && !plots.front().over_years.empty();
+  if (years) {
+    for (const std::string& heading : percentile_headings()) header.push_back("mean DLI " + heading);
+  }
+  CsvTable table(header);
   for (const PlotRow& plot : plots) {
     assert(plot.by_period.size() == periods.size());
     for (std::size_t i = 0; i < periods.size(); ++i) {
       const PlotStatistics& light = plot.by_period[i];
-      table.add({plot.id, plot.crop, periods[i], csv_number(plot.area_m2, 1), csv_number(light.mean, 3),
-                 csv_number(light.p10, 3), csv_number(light.least, 3), csv_number(light.most, 3),
-                 csv_number(light.cv, 4)});
+      std::vector<std::string> fields{plot.id,
+                                      plot.crop,
+                                      periods[i],
+                                      csv_number(plot.area_m2, 1),
+                                      csv_number(light.mean, 3),
+                                      csv_number(light.p10, 3),
+                                      csv_number(light.least, 3),
+                                      csv_number(light.most, 3),
+                                      csv_number(light.cv, 4)};
+      if (years) add_percentiles(fields, plot.over_years[i]);
+      table.add(fields);
     }
   }
   table.write(file);

@@ -6,6 +6,7 @@
 #include <string>
 #include <vector>
 
+#include "map/years.h"
 #include "report/statistics.h"
 #include "sunfall/time.h"
 
@@ -32,10 +33,11 @@ struct PlotRow {
   std::string id;
   std::string crop;  // may be empty
   double area_m2 = 0.0;
-  std::vector<PlotStatistics> by_period;  // DLI, as many as there are periods
+  std::vector<PlotStatistics> by_period;    // DLI, as many as there are periods
+  std::vector<YearPercentiles> over_years;  // of the plot's mean DLI, per period; or empty
 };
 
-// A row per plot and period.
+// A row per plot and period; percentiles over the years where the first plot has them.
 void write_plots_csv(const std::filesystem::path& file, const std::vector<PlotRow>& plots,
                      const std::vector<std::string>& periods);
 

@@ -15,6 +15,7 @@
 #include "report/style_sld.h"
 #include "report/summary.h"
 #include "report/tables.h"
+#include "report/years_table.h"
 #include "sunfall/error.h"
 #include "sunfall/version.h"
 
@@ -89,10 +90,12 @@ MapPanel panel_of(const std::string& name, LayerLight light, double open_field) 
   return {name, std::move(light.preview), light.numbers};
 }
 
-std::vector<PlotRow> plot_rows(const std::vector<Plot>& plots, const std::vector<LayerLight>& periods) {
+std::vector<PlotRow> plot_rows(const std::vector<Plot>& plots, const std::vector<LayerLight>& periods,
+                               const MapResult& maps) {
   std::vector<PlotRow> rows;
   for (std::size_t i = 0; i < plots.size(); ++i) {
-    PlotRow row{plots[i].id, plots[i].crop, plots[i].area_m2, {}};
+    PlotRow row{plots[i].id, plots[i].crop, plots[i].area_m2, {}, {}};
+    if (has_percentiles(maps.open)) row.over_years = percentiles_of(maps.open, maps.plot_shares[i]);
     for (const LayerLight& period : periods) row.by_period.push_back(period.plots[i]);
     rows.push_back(std::move(row));
   }
@@ -113,6 +116,12 @@ std::vector<PlotColumn> plot_columns(const std::vector<PlotRow>& rows,
     }
     columns.push_back(std::move(mean));
     columns.push_back(std::move(p10));
+    if (rows.empty() || rows.front().over_years.empty()) continue;
+    for (std::size_t k = 0; k < kYearPercents.size(); ++k) {
+      PlotColumn over_years{fmt::format("dli_{}_years_p{}", periods[p], kYearPercents[k]), {}, {}};
+      for (const PlotRow& row : rows) over_years.numbers.push_back(row.over_years[p][k]);
+      columns.push_back(std::move(over_years));
+    }
   }
   return columns;
 }
@@ -129,6 +138,18 @@ std::vector<Summary::Input> inputs_of(const Plan& plan) {
   for (const std::filesystem::path& file : files_of(plan.light)) add(file);
   if (plan.plots) add(plan.plots->file);
   return inputs;
+}
+
+std::vector<Summary::YearLight> years_of(const OpenField& open) {
+  const std::vector<double> everything(2 * open.beam.size(), 1.0);
+  std::vector<Summary::YearLight> years;
+  for (const OpenYear& year : open.years) {
+    Summary::YearLight out{year.year, {}, {}, dli_in_year(year, everything).back()};
+    std::copy_n(year.beam.begin(), 12, out.beam_month.begin());
+    std::copy_n(year.sky.begin(), 12, out.sky_month.begin());
+    years.push_back(out);
+  }
+  return years;
 }
 
 Summary summary_of(const Plan& plan, const Site& site, const MapResult& maps,
@@ -152,6 +173,8 @@ Summary summary_of(const Plan& plan, const Site& site, const MapResult& maps,
     summary.open_field.beam_part_month[m] = open > 0.0 ? maps.open.beam[m] / open : kMissing;
   }
   summary.open_field.dli_year = maps.open.year;
+  if (maps.open.years.size() > 1) summary.open_field.years = years_of(maps.open);
+  if (has_percentiles(maps.open)) summary.open_field.over_years = percentiles_of(maps.open);
   summary.grid.columns = maps.frame.columns;
   summary.grid.rows = maps.frame.rows;
   summary.grid.cell_m = maps.frame.cell_m;
@@ -165,6 +188,7 @@ Summary summary_of(const Plan& plan, const Site& site, const MapResult& maps,
       plot.dli_month_p10[m] = row.by_period[m].p10;
     }
     plot.lowest_month = lowest_month(plot.dli_month_mean);
+    plot.over_years = row.over_years;
     summary.plots.push_back(std::move(plot));
   }
   summary.layers.resize(maps.layers.size());
@@ -189,10 +213,11 @@ std::vector<Plot> plots_of(const Plan& plan, const GridFrame& frame) {
 }
 
 void write_run(const Plan& plan, const Site& site, const MapResult& maps, const std::vector<Plot>& plots,
-               const std::filesystem::path& folder, int jobs, Progress& progress) {
+               const std::filesystem::path& folder, const MapOptions& options, Progress& progress) {
   const Stopwatch watch;
+  const int jobs = options.jobs;
   const std::size_t periods = maps.periods.size();
-  const PlotCells cells = plots.empty() ? PlotCells{} : cells_of_plots(plots, maps.frame);
+  const PlotCells& cells = options.plots;
   std::vector<LayerLight> light(periods + 1);  // the year last
   SharedProgress told(progress, "tables and pictures", periods + 2);
   on_all_cores(jobs, light.size(), [&](std::size_t i) {
@@ -204,7 +229,8 @@ void write_run(const Plan& plan, const Site& site, const MapResult& maps, const 
         read_light(folder / (i < periods ? layer_file(maps.periods[i]) : "dli-year.tif"), maps.frame, cells);
     told.one_done();
   });
-  const std::vector<PlotRow> rows = plot_rows(plots, light);
+  const std::vector<PlotRow> rows = plot_rows(plots, light, maps);
+  if (maps.open.years.size() > 1) write_years_csv(folder / "years.csv", maps.open, maps.periods);
   LayerLight year = std::move(light.back());
 
   const MapContext context = context_of(plan, site, plots);

@@ -18,8 +18,8 @@ namespace sunfall {
 std::vector<Plot> plots_of(const Plan& plan, const GridFrame& frame);
 
 // Reads the finished layers in `folder` and writes the rest of the run beside them, the summary
-// last. Throws Error.
+// last. `options` are those of the maps. Throws Error.
 void write_run(const Plan& plan, const Site& site, const MapResult& maps, const std::vector<Plot>& plots,
-               const std::filesystem::path& folder, int jobs, Progress& progress);
+               const std::filesystem::path& folder, const MapOptions& options, Progress& progress);
 
 }  // namespace sunfall

@@ -68,11 +68,9 @@ Cost solve_tiles(const oracle::Ground& ground, const DomeLight& light,
 }
 
 Cost geometry_and_light(const oracle::Ground& ground, const DomeLight& light, std::vector<CellLight>& cells) {
-  const int year = ground.plan.light_options.year;
-  const OpenField open = open_field(light, year);
-  return solve_tiles(ground, light, [&](const TileShares& shares) {
-    keep(shares, light_of(shares, open, light.periods, year), cells);
-  });
+  const OpenField open = open_field(light);
+  return solve_tiles(ground, light,
+                     [&](const TileShares& shares) { keep(shares, light_of(shares, open), cells); });
 }
 
 std::vector<CellLight> some_cells(const GridFrame& frame, std::size_t count) {

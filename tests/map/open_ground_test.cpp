@@ -56,7 +56,7 @@ void expect_the_open_field(const FlatPlace& flat, const PlanLight& light) {
   const std::vector<double> expected = monthly_dli(light.site.series);
   const TileShares shares = whole_shares(flat.scene, light.dome);
   for (const float share : shares.shares) ASSERT_EQ(share, 1.0F);
-  const TileLight cells = light_of(shares, open_field(light.dome, 2024), light.dome.periods, 2024);
+  const TileLight cells = light_of(shares, open_field(light.dome));
   for (std::size_t month = 0; month < 12; ++month) {
     for (const float dli : cells.dli[month])
       ASSERT_NEAR(dli, expected[month], kFloatRounding * expected[month]) << "month " << month + 1;

@@ -1,6 +1,7 @@
 // [periods]: months and named ranges.
 
 #include <gtest/gtest.h>
+#include <fstream>
 
 #include "plan/month_day.h"
 #include "plan/plan_folder.h"
@@ -74,11 +75,11 @@ TEST(PeriodsTable, RefusesNamesThatFilesCannotBear) {
                       "\"" + forty + "a\"", remedy);
 }
 
-TEST(PeriodsTable, RefusesNamesOfLayersThatEveryRunWrites) {
+TEST(PeriodsTable, RefusesNamesOfOtherLayers) {
   const PlanFolder folder;
-  for (const std::string name : {"year", "lowest", "lowest-month"}) {
+  for (const std::string name : {"year", "lowest", "lowest-month", "year-p10", "spring-p90"}) {
     folder.expect_fault(with_periods(name + " = { from = '04-15', to = '09-30' }"),
-                        "farm.toml:7 periods." + name, "the name belongs to a layer that every run writes",
+                        "farm.toml:7 periods." + name, "the name belongs to a layer of another kind",
                         "\"" + name + "\"", "Choose another name");
   }
 }
@@ -125,6 +126,17 @@ TEST(PeriodsTable, LeapDayAloneNeedsALeapYear) {
   folder.expect_fault(plan_with("year = 2100\n" + leap), "farm.toml:8 periods.leap", "the range holds no day",
                       "02-29 in 2100", "Widen the range, or set [light] year to a leap year");
   EXPECT_EQ(folder.read(plan_with("year = 2024\n" + leap)).periods.size(), 13U);
+}
+
+// A record has years of its own, known once it is read.
+TEST(PeriodsTable, LeapDayAloneWaitsForTheRecord) {
+  const PlanFolder folder;
+  std::ofstream(folder.path() / "station.csv") << "time,ghi\n";
+  const Plan plan = folder.read(
+      "[site]\nground = 'ground.tif'\nclock = 'UTC'\n[light.series]\nfile = 'station.csv'\n"
+      "stamp = 'end'\nglobal = 'ghi'\nunit = 'W m-2'\n"
+      "[periods]\nleap = { from = '02-29', to = '02-29' }\n");
+  EXPECT_EQ(plan.periods.size(), 13U);
 }
 
 TEST(MonthDay, KnowsEveryDayOfALeapYearAndNoOther) {

@@ -39,6 +39,7 @@ quality = "fine"
 sky = "overcast"
 [output]
 shares = true
+percentiles = true
 )";
 
 TEST(ReadPlan, CarriesEveryValue) {
@@ -65,6 +66,8 @@ TEST(ReadPlan, CarriesEveryValue) {
   EXPECT_EQ(plan.dome.quality, DomeQuality::fine);
   EXPECT_EQ(plan.dome.sky, SkyModel::overcast);
   EXPECT_TRUE(plan.output.shares);
+  EXPECT_TRUE(plan.output.percentiles);
+  EXPECT_EQ(plan.output.percentiles_where, folder.plan_file().string() + ":27 output.percentiles");
   EXPECT_THAT(plan.defaults, ElementsAre("periods.months = true"));
 }
 
@@ -96,7 +99,7 @@ TEST(ReadPlan, TellsWhatTheShortestPlanLeavesOpen) {
                   "site.receiver_height = 0.5 m", "site.receiver_plane = \"level\"", "light.year = 2025",
                   "light.turbidity = 3 in every month", "periods.months = true",
                   "plots.file = none (no table of plots is made)", "dome.quality = \"standard\"",
-                  "dome.sky = \"clearness\"", "output.shares = false"));
+                  "dome.sky = \"clearness\"", "output.shares = false", "output.percentiles = false"));
 }
 
 // What the defaults say in words must be what the plan then holds.
@@ -110,6 +113,7 @@ TEST(ReadPlan, HoldsTheDefaultsThatItTells) {
   EXPECT_EQ(plan.dome.quality, DomeQuality::standard);
   EXPECT_EQ(plan.dome.sky, SkyModel::clearness);
   EXPECT_FALSE(plan.output.shares);
+  EXPECT_FALSE(plan.output.percentiles);
   ASSERT_TRUE(plan.plots.has_value());
   EXPECT_EQ(plan.plots->layer, "");
   EXPECT_EQ(plan.plots->id, "id");

@@ -101,14 +101,21 @@ TEST_F(SummaryTest, TakesAnyName) {
   EXPECT_TRUE(json["plots"][0]["lowest_month"].is_null());
 }
 
-TEST_F(SummaryTest, TheLowestMonthIsTheFirstOfTheLowest) {
+TEST_F(SummaryTest, TheLowestMonthIsTheMiddleOfTheLowest) {
   std::array<double, 12> months{};
   months.fill(5.0);
-  EXPECT_EQ(lowest_month(months), 1);
+  EXPECT_EQ(lowest_month(months), 6);
   months[0] = std::nan("");
   months[7] = 2.0;
-  months[11] = 2.0;
   EXPECT_EQ(lowest_month(months), 8);
+  months[11] = 2.0;  // two rows of one month: the first
+  EXPECT_EQ(lowest_month(months), 8);
+  for (const std::size_t polar_night : {10U, 11U, 0U}) months[polar_night] = 0.0;
+  EXPECT_EQ(lowest_month(months), 12);
+  months[1] = 0.0;  // November to February
+  EXPECT_EQ(lowest_month(months), 12);
+  months[9] = 0.0;  // October to February
+  EXPECT_EQ(lowest_month(months), 12);
   months.fill(std::nan(""));
   EXPECT_EQ(lowest_month(months), 0);
 }
