@@ -7,7 +7,9 @@
 
 #include <array>
 #include <chrono>
+#include <cstdint>
 #include <filesystem>
+#include <functional>
 #include <optional>
 #include <string>
 #include <variant>
@@ -74,13 +76,48 @@ struct SeriesSource {
   bool allow_gaps = false;   // fill months of which more than a tenth is missing
   bool trust_clock = false;  // take the stamps as they are, however the light of clear days lies
 };
-using LightSource = std::variant<ClearSource, MonthlyGlobalSource, SeriesSource>;
+// A gridded weather file (NetCDF, GRIB): the record of the point where the farm lies.
+struct GridSource {
+  enum class Point { nearest, bilinear };  // bilinear: between the four points around
+  // What an energy is the sum of: its own step, or all since the forecast began.
+  enum class Accumulated { step, start };
+  enum class BeamPlane { sun, level };  // what plane the beam is counted on
+
+  std::filesystem::path file;
+  std::string global;  // names of variables, as in SeriesSource; an empty one is not there
+  std::string diffuse;
+  std::string beam;
+  SeriesSource::Stamp stamp = SeriesSource::Stamp::end;
+  std::optional<SeriesSource::Unit> unit;  // none: the file must say it
+  Accumulated accumulated = Accumulated::step;
+  BeamPlane beam_plane = BeamPlane::sun;
+  Point point = Point::nearest;
+  SeriesSource::Split split = SeriesSource::Split::logistic;
+  bool allow_gaps = false;
+  bool trust_clock = false;
+};
+using LightSource = std::variant<ClearSource, MonthlyGlobalSource, SeriesSource, GridSource>;
 
 // The files that a source reads.
 std::vector<std::filesystem::path> files_of(const LightSource& source);
 
+// What a gridded file holds at a place, as the file has it.
+struct PointRecord {
+  struct Quantity {
+    std::string unit;           // the file's own words, may be empty
+    std::vector<double> value;  // one per time, NaN where missing; no element where not asked for
+  };
+  std::vector<std::int64_t> time_s;    // seconds of UTC since 1970, increasing
+  std::vector<std::int64_t> run_s;     // when each value's forecast began; empty where unknown
+  std::array<Quantity, 3> quantities;  // global, diffuse, beam
+  std::string points;                  // for people: the points taken
+};
+
 struct LightOptions {
   int year = 2025;  // the calendar year whose sun is followed when the source names none
+  // Opens gridded files for a GridSource; light itself opens tables of text only. Handed in by whoever may
+  // see such files.
+  std::function<PointRecord(const GridSource&, const Place&)> read_point = {};
 };
 
 // Throws Error(plan) for radiation that is negative, not finite or above the extraterrestrial;

@@ -54,6 +54,9 @@ void register_drivers() {
   RegisterOGRShape();
   RegisterOGRGeoJSON();
   RegisterOGRFlatGeobuf();
+  // Gridded weather; opened for that alone (point_series.h).
+  GDALRegister_netCDF();
+  GDALRegister_GRIB();
 }
 
 // A file-size limit should arrive as a failed write, which has a message, not as a signal that

@@ -84,8 +84,9 @@ std::string causes(double late_min, const Readings& readings, const SeriesSource
   const auto add = [&](const std::string& words) { text += (text.empty() ? "" : ", or ") + words; };
   if (source.stamp == Stamp::end && near(-step_min)) add("give stamp = \"begin\"");
   if (source.stamp == Stamp::begin && near(step_min)) add("give stamp = \"end\"");
-  if (!source.utc && offset_min != 0.0 && near(-offset_min)) add("give utc = true if the stamps are UTC");
-  if (source.utc && offset_min != 0.0 && near(offset_min)) add("remove utc = true");
+  if (!readings.zone_known && !source.utc && offset_min != 0.0 && near(-offset_min))
+    add("give utc = true if the stamps are UTC");
+  if (!readings.zone_known && source.utc && offset_min != 0.0 && near(offset_min)) add("remove utc = true");
   add("mend the stamps, the plan's clock or the place of its map");
   return text + "; trust_clock = true takes them as they are";
 }

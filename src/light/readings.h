@@ -18,7 +18,8 @@ struct Readings {
   std::string file;
   std::chrono::seconds step{3600};
   std::vector<std::int64_t> begin_s;  // of each interval, seconds of UTC since 1970, increasing
-  std::vector<std::int32_t> line;     // of the file
+  std::vector<std::int32_t> line;     // of the file; empty where it has no lines
+  bool zone_known = false;            // the file itself says how its times stand to UTC
   // In the file's unit, NaN where missing; without elements where the file has no such column.
   std::array<std::vector<float>, kQuantities> value;
   std::vector<std::string> notes;

@@ -136,7 +136,8 @@ void fill_and_note(StepLight& steps, const SeriesSource& source, LightSeries& se
       text);
 }
 
-// Beam and diffuse together give the global; a quantum sensor faces the sky.
+}  // namespace
+
 void check_columns(const SeriesSource& source, const std::string& where) {
   const bool whole = !source.global.empty() || (!source.diffuse.empty() && !source.beam.empty());
   if (!whole) {
@@ -153,11 +154,12 @@ void check_columns(const SeriesSource& source, const std::string& where) {
   }
 }
 
-}  // namespace
-
 LightSeries make_series(const SeriesSource& source, const LightRequest& request) {
   check_columns(source, request.where);
-  Readings readings = read_readings(source, request.clock);
+  return series_of(read_readings(source, request.clock), source, request);
+}
+
+LightSeries series_of(Readings readings, const SeriesSource& source, const LightRequest& request) {
   LightSeries series = open_years(readings, request);
   const std::vector<IntervalSun> suns = suns_of(readings, series);
   const double flux = flux_per_unit(source.unit, readings.step);

@@ -2,6 +2,7 @@
 // pair that overloads make_series, and one line here.
 
 #include "light/clear.h"
+#include "light/grid.h"
 #include "light/monthly.h"
 #include "light/series.h"
 

@@ -11,6 +11,7 @@
 #include "geo/map_scale.h"
 #include "geo/raster_source.h"
 #include "geo/surface_check.h"
+#include "map/read_point.h"
 #include "map/years.h"
 #include "sun/ephemeris.h"
 #include "sunfall/error.h"
@@ -106,8 +107,9 @@ Site open_site(const Plan& plan) {
   site.middle = geo_place(site.frame, site.frame.middle());
   require_true_metres(site.frame, site.middle, ground.file().string() + " (ground)");
   site.middle.place.height_m = height_at_middle(ground);
-  site.series =
-      make_light(plan.light, site.middle.place, plan.site.clock, plan.light_options, plan.light_where);
+  LightOptions options = plan.light_options;
+  options.read_point = read_point;
+  site.series = make_light(plan.light, site.middle.place, plan.site.clock, options, plan.light_where);
   for (const std::string& note : site.series.notes) site.notes.push_back(sentence(note));
   note_clock(site.series, site.notes);
   check_years(plan, site);

@@ -4,6 +4,7 @@
 #include <string>
 #include <vector>
 
+#include "plan/grid_table.h"
 #include "plan/series_table.h"
 
 namespace sunfall {
@@ -24,14 +25,16 @@ const MonthsKey kTurbidity{"turbidity",
 const WholeKey kYear{"year", {1950, 2100, "", "The sun is known for these years"}, 2025};
 
 const TableKey kSeries{"series", "none (one source must be given)"};
+const TableKey kGrid{"grid", "none (one source must be given)"};
 
 const char* const kOneSource =
-    "Give one of monthly_global = [twelve numbers], series = { file = … } and clear = true";
+    "Give one of monthly_global = [twelve numbers], series = { file = … }, grid = { file = … } and clear = "
+    "true";
 
 // The keys of the sources that the plan gives, in the order of the page.
 std::vector<std::string> sources_given(const TableReader& table, bool clear) {
   std::vector<std::string> given;
-  for (const std::string& name : {kMonthlyGlobal.name, kSeries.name}) {
+  for (const std::string& name : {kMonthlyGlobal.name, kSeries.name, kGrid.name}) {
     if (table.has(name)) given.push_back(name);
   }
   if (clear) given.push_back(kClear.name);
@@ -41,7 +44,11 @@ std::vector<std::string> sources_given(const TableReader& table, bool clear) {
 }  // namespace
 
 TableShape light_shape() {
-  return {"light", {kMonthlyGlobal, kSeries, kClear, kTurbidity, kYear}, {}, {}, {series_shape()}};
+  return {"light",
+          {kMonthlyGlobal, kSeries, kGrid, kClear, kTurbidity, kYear},
+          {},
+          {},
+          {series_shape(), grid_shape()}};
 }
 
 void read_light_table(TableReader& table, Plan& plan) {
@@ -49,10 +56,11 @@ void read_light_table(TableReader& table, Plan& plan) {
   const bool clear = table.flag_if_given(kClear).value_or(false);
   const auto turbidity = table.months_if_given(kTurbidity);
   auto series = table.table_if_given(kSeries, series_shape());
-  if (series && table.has(kYear.name)) {
+  auto grid = table.table_if_given(kGrid, grid_shape());
+  if ((series || grid) && table.has(kYear.name)) {
     table.refuse(kYear.name, "a series has years of its own", "", "Remove it");
   }
-  if (!series) plan.light_options.year = table.whole(kYear);
+  if (!series && !grid) plan.light_options.year = table.whole(kYear);
 
   const std::vector<std::string> given = sources_given(table, clear);
   if (given.size() > 1) {
@@ -68,6 +76,10 @@ void read_light_table(TableReader& table, Plan& plan) {
   plan.light_where = table.where(given.front());
   if (series) {
     plan.light = read_series_table(*series);
+    return;
+  }
+  if (grid) {
+    plan.light = read_grid_table(*grid);
     return;
   }
   if (monthly) {

@@ -58,7 +58,7 @@ TEST(PlanDocument, NamesEveryTableThatIsNotBuiltYet) {
 TEST(PlanDocument, HoldsPlansThatCanBeRead) {
   const PlanFolder folder;
   const std::vector<std::string> plans = example_plans(plan_page());
-  ASSERT_EQ(plans.size(), 3U);
+  ASSERT_EQ(plans.size(), 4U);
   const Plan whole = folder.read(plans[0]);
   EXPECT_EQ(whole.name, "Alder Reach");
   EXPECT_THAT(whole.defaults, ::testing::ElementsAre("light.year = 2025", "periods.months = true"));
@@ -66,6 +66,8 @@ TEST(PlanDocument, HoldsPlansThatCanBeRead) {
   EXPECT_EQ(shortest.site.clock.name(), "+01:00");
   const Plan station = folder.read(plans[2]);
   EXPECT_EQ(std::get<SeriesSource>(station.light).global, "GHI");
+  const Plan grid = folder.read(plans[3]);
+  EXPECT_EQ(std::get<GridSource>(grid.light).beam, "fdir");
 }
 
 }  // namespace

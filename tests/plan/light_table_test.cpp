@@ -12,7 +12,7 @@ using ::testing::Each;
 using ::testing::ElementsAre;
 
 const std::string kOneSource =
-    "Give one of monthly_global = [twelve numbers], series = { file = … } and clear = true";
+    "Give one of monthly_global = [twelve numbers], series = { file = … }, grid = { file = … } and clear = true";
 const std::string kUnits =
     "Write the mean day's sum on a level plane: kWh m-2 d-1 times 3.6, mean W m-2 times 0.0864";
 const std::string kAt = "farm.toml:5 light.monthly_global";

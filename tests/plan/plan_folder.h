@@ -12,7 +12,7 @@ namespace sunfall::testing {
 
 class PlanFolder {
  public:
-  // Holds empty files ground.tif, surface.tif, county.tif, plots.gpkg and station.csv.
+  // Holds empty files ground.tif, surface.tif, county.tif, plots.gpkg, station.csv and reanalysis.nc.
   PlanFolder();
   PlanFolder(const PlanFolder&) = delete;
   PlanFolder& operator=(const PlanFolder&) = delete;

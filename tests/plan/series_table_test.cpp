@@ -92,7 +92,7 @@ TEST(SeriesTable, NamesUnknownKeysAndMissingFiles) {
   const PlanFolder folder;
   folder.expect_fault(plan_with_series(kUsual + "globl = 'g'\n"), "farm.toml:8 light.series.globl",
                       "unknown key", "", "Perhaps \"global\" is meant");
-  folder.expect_fault(plan_with_light("stamp = 'end'"), "farm.toml:5 light.stamp", "unknown key", "",
+  folder.expect_fault(plan_with_light("utc = true"), "farm.toml:5 light.utc", "unknown key", "",
                       "It belongs in [light.series]");
   std::string plan = plan_with_series(kUsual + "global = 'g'\n");
   plan.replace(plan.find("station.csv"), 11, "statoin.csv");
