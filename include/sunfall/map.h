@@ -42,6 +42,8 @@ struct MapResult {
   std::vector<Period> periods;
   OpenField open;
   std::vector<std::vector<double>> plot_shares;  // [plot][beam of every period, then sky]: mean of its cells
+  std::string shares_from;                       // the finished run's folder; empty where geometry was solved
+  std::vector<std::string> notes;                // assumptions that were made for the user
   double valid_fraction = 0.0;                   // cells with a value
   double mean_sight = 0.0;
   std::map<std::string, double> seconds;  // per stage

@@ -1,4 +1,4 @@
-// sunfall map PLAN [-o DIR]
+// sunfall map PLAN [--on DIR] [-o DIR]
 
 #include <fmt/format.h>
 #include <tbb/global_control.h>
@@ -13,9 +13,11 @@
 #include "app/former_run.h"
 #include "app/run_folder.h"
 #include "app/terminal_progress.h"
+#include "map/finished_run.h"
 #include "map/site.h"
 #include "map/years.h"
 #include "report/write_run.h"
+#include "sunfall/error.h"
 #include "sunfall/map.h"
 
 namespace sunfall {
@@ -24,6 +26,7 @@ namespace {
 struct MapCommand {
   CommonOptions common;
   std::filesystem::path folder;
+  std::filesystem::path on;  // a finished run whose shares are used; or empty
 };
 
 void print_months(const MapResult& maps) {
@@ -47,16 +50,30 @@ void print_valid(const MapResult& maps) {
              std::floor(1000.0 * maps.valid_fraction) / 10.0);
 }
 
+// The finished run that the command names, if it fits the plan and will stay as it is.
+std::optional<FinishedRun> finished_run_of(const MapCommand& command, const Plan& plan,
+                                           const std::filesystem::path& out) {
+  if (command.on.empty()) return std::nullopt;
+  std::error_code ignored;
+  if (std::filesystem::equivalent(command.on, out, ignored)) {
+    throw Error(ErrorKind::plan, {"the new run would take the place of the finished one", "--on",
+                                  command.on.string(), "Give the new run a folder of its own with -o"});
+  }
+  FinishedRun run(command.on);
+  run.require_geometry(geometry_of(plan), plan.file.string());
+  return run;
+}
+
 void run_map(const MapCommand& command) {
   const Plan plan = plan_of(command.common);
   const std::filesystem::path out =
       command.folder.empty() ? std::filesystem::path("outputs") / plan.file.stem() : command.folder;
   require_apart_from_inputs(plan, out);
+  const std::optional<FinishedRun> finished = finished_run_of(command, plan, out);
   const Site site = site_of(plan);
   const std::vector<Plot> plots = plots_of(plan, site.frame);
   TerminalProgress progress(command.common.quiet);
   RunFolder folder(out);
-  const DomeLight light = dome_light_of(plan, site);
   MapOptions options;
   options.jobs = command.common.jobs;
   if (!plots.empty()) options.plots = cells_of_plots(plots, site.frame);
@@ -65,8 +82,11 @@ void run_map(const MapCommand& command) {
   if (options.jobs > 0) {
     workers.emplace(tbb::global_control::max_allowed_parallelism, static_cast<std::size_t>(options.jobs));
   }
+  const auto provenance = provenance_of(plan, site);
   const MapResult maps =
-      make_maps(plan, light, provenance_of(plan, site), folder.staging(), options, progress);
+      finished ? make_maps_on(*finished, plan, open_field(open_years(site.series, plan.periods)), provenance,
+                              folder.staging(), options, progress)
+               : make_maps(plan, dome_light_of(plan, site), provenance, folder.staging(), options, progress);
   write_run(plan, site, maps, plots, folder.staging(), options, progress);
   folder.publish("summary.json", files_of_former_run(out));
   if (command.common.json) {
@@ -81,6 +101,7 @@ void run_map(const MapCommand& command) {
     if (site.series.is_ceiling) fmt::print("This is a cloudless ceiling, not a forecast.\n");
     fmt::print("Notes:\n");
     for (const std::string& note : site.notes) fmt::print("  {}\n", note);
+    for (const std::string& note : maps.notes) fmt::print("  {}\n", note);
   }
 }
 
@@ -91,6 +112,9 @@ Action add_map(CLI::App& app, CLI::App*& command) {
   command = add_command(app, "map", "make light maps, tables and pictures", options->common);
   command->add_option("-o,--output", options->folder,
                       "the run's folder (default: outputs/NAME of the plan's file)");
+  command->add_option("--on", options->on,
+                      "folder of a finished run with shares, of the same plan but for its light: geometry is "
+                      "taken from there, not solved again");
   return [options] { run_map(*options); };
 }
 

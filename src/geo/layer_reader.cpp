@@ -62,6 +62,8 @@ GDALDatasetUniquePtr open_layer(const std::filesystem::path& layer) {
   return dataset;
 }
 
+GridFrame layer_frame(const std::filesystem::path& layer) { return frame_of(*open_layer(layer)); }
+
 Grid<float> read_preview(const std::filesystem::path& layer, int largest_side) {
   const GDALDatasetUniquePtr dataset = open_layer(layer);
   const GridFrame whole = frame_of(*dataset);

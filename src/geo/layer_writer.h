@@ -51,6 +51,9 @@ Grid<float> read_preview(const std::filesystem::path& layer, int largest_side);
 // A window of a finished layer at full resolution, missing where nodata.
 Grid<float> read_layer(const std::filesystem::path& layer, const CellWindow& window);
 
+// Where a finished layer lies.
+GridFrame layer_frame(const std::filesystem::path& layer);
+
 // Once per process, before any other use: registers only the drivers that Sunfall needs, closes
 // off the network and side-car files. Safe to call again.
 void start_geo();

@@ -56,6 +56,14 @@ Json open_field_json(const Summary& summary) {
   Json json{{"dli_month", numbers(summary.open_field.dli_month)},
             {"dli_year", number(summary.open_field.dli_year)},
             {"beam_part_month", numbers(summary.open_field.beam_part_month)}};
+  json["periods"] = Json::array();
+  for (const Summary::PeriodLight& light : summary.open_field.periods) {
+    json["periods"].push_back({{"name", light.period.name},
+                               {"from", day_key(light.period.from)},
+                               {"to", day_key(light.period.to)},
+                               {"beam", number(light.beam)},
+                               {"sky", number(light.sky)}});
+  }
   add_over_years(json, summary.open_field.over_years);
   if (!summary.open_field.years.empty()) json["years"] = Json::array();
   for (const Summary::YearLight& year : summary.open_field.years) {
@@ -91,6 +99,9 @@ std::string summary_json(const Summary& summary) {
   json["plan"] = summary.plan;
   json["version"] = summary.version;
   json["inputs"] = inputs_json(summary);
+  json["geometry"] = Json::object();
+  for (const auto& [key, value] : summary.geometry) json["geometry"][key] = value;
+  if (!summary.shares_from.empty()) json["shares_from"] = summary.shares_from;
   json["place"] = {{"longitude", number(summary.place.longitude)},
                    {"latitude", number(summary.place.latitude)},
                    {"convergence_deg", number(summary.place.convergence_deg)}};

@@ -8,6 +8,7 @@
 #include <vector>
 
 #include "core/fingerprint.h"
+#include "map/geometry_record.h"
 #include "map/years.h"
 #include "sunfall/grid.h"
 
@@ -23,6 +24,11 @@ struct Summary {
     std::string description;
     std::string unit;
     Fingerprint print;
+  };
+  struct PeriodLight {
+    Period period;
+    double beam = kMissing;  // of the open field
+    double sky = kMissing;
   };
   struct YearLight {
     int year = 0;
@@ -41,6 +47,8 @@ struct Summary {
 
   std::string plan;
   std::string version;
+  GeometryRecord geometry;
+  std::string shares_from;  // the folder of the finished run whose shares were used; or empty
   std::vector<Input> inputs;
   struct {
     double longitude = kMissing;
@@ -60,6 +68,7 @@ struct Summary {
     std::array<double, 12> dli_month{};
     double dli_year = kMissing;
     std::array<double, 12> beam_part_month{};
+    std::vector<PeriodLight> periods;
     std::vector<YearLight> years;             // empty for one year
     std::vector<YearPercentiles> over_years;  // the months and last the year; or empty
   } open_field;

@@ -158,6 +158,8 @@ Summary summary_of(const Plan& plan, const Site& site, const MapResult& maps,
   summary.plan = plan.name;
   summary.version = kVersion;
   summary.inputs = inputs_of(plan);
+  summary.geometry = geometry_of(plan);
+  summary.shares_from = maps.shares_from;
   summary.place.longitude = site.middle.place.longitude.degrees();
   summary.place.latitude = site.middle.place.latitude.degrees();
   summary.place.convergence_deg = site.middle.convergence.degrees();
@@ -173,6 +175,8 @@ Summary summary_of(const Plan& plan, const Site& site, const MapResult& maps,
     summary.open_field.beam_part_month[m] = open > 0.0 ? maps.open.beam[m] / open : kMissing;
   }
   summary.open_field.dli_year = maps.open.year;
+  for (std::size_t p = 0; p < maps.periods.size(); ++p)
+    summary.open_field.periods.push_back({maps.periods[p], maps.open.beam[p], maps.open.sky[p]});
   if (maps.open.years.size() > 1) summary.open_field.years = years_of(maps.open);
   if (has_percentiles(maps.open)) summary.open_field.over_years = percentiles_of(maps.open);
   summary.grid.columns = maps.frame.columns;
@@ -199,6 +203,7 @@ Summary summary_of(const Plan& plan, const Site& site, const MapResult& maps,
   });
   for (const auto& [stage, seconds] : maps.seconds) summary.timings_s.emplace_back(stage, seconds);
   summary.notes = site.notes;
+  summary.notes.insert(summary.notes.end(), maps.notes.begin(), maps.notes.end());
   for (const std::string& choice : plan.defaults) summary.notes.push_back("Left open in the plan: " + choice);
   summary.notes.push_back(
       fmt::format("The inputs cover {:.1f} % of the horizon (mean of sight.tif).", 100.0 * maps.mean_sight));

@@ -48,13 +48,13 @@ TEST_F(SummaryTest, HasItsKeysInOrder) {
   write_summary(folder_ / "summary.json", example());
   const Json json = Json::parse(content(folder_ / "summary.json"));
   using Keys = std::vector<std::string>;
-  EXPECT_EQ(keys_of(json), (Keys{"plan", "version", "inputs", "place", "light", "dome", "open_field", "grid",
-                                 "plots", "layers", "timings_s", "notes"}));
+  EXPECT_EQ(keys_of(json), (Keys{"plan", "version", "inputs", "geometry", "place", "light", "dome",
+                                 "open_field", "grid", "plots", "layers", "timings_s", "notes"}));
   EXPECT_EQ(keys_of(json["inputs"][0]), (Keys{"path", "size", "sha256"}));
   EXPECT_EQ(keys_of(json["place"]), (Keys{"longitude", "latitude", "convergence_deg"}));
   EXPECT_EQ(keys_of(json["light"]), (Keys{"description", "is_ceiling", "umol_per_joule"}));
   EXPECT_EQ(keys_of(json["dome"]), (Keys{"sectors", "bands"}));
-  EXPECT_EQ(keys_of(json["open_field"]), (Keys{"dli_month", "dli_year", "beam_part_month"}));
+  EXPECT_EQ(keys_of(json["open_field"]), (Keys{"dli_month", "dli_year", "beam_part_month", "periods"}));
   EXPECT_EQ(keys_of(json["grid"]), (Keys{"columns", "rows", "cell_m", "valid_fraction"}));
   EXPECT_EQ(keys_of(json["plots"][0]),
             (Keys{"id", "area_m2", "dli_month_mean", "dli_month_p10", "lowest_month"}));
