@@ -102,7 +102,8 @@ class SeveralYears {
   explicit SeveralYears(Plan plan) {
     plan.output.percentiles = false;  // its own light is of one year
     site_ = open_site(plan);
-    const LightRequest request{site_.middle.place, plan.site.clock, {}, "test"};
+    const LightOptions options;
+    const LightRequest request{site_.middle.place, plan.site.clock, options, "test"};
     whole_ = open_series(request, std::chrono::year{kFirstYear}, kYears);
     whole_.steps.clear();
     for (int y = 0; y < kYears; ++y) {
