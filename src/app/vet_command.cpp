@@ -26,8 +26,8 @@ struct Estimate {
   double memory_mib = 0.0;
 };
 
-// Solves a small tile in the middle of the map and scales up. Memory is that of the tiles at work,
-// the coarser levels of the whole map, and the raster cache.
+// Solves a small tile in the middle of the map and scales up. Memory is that of the tiles at work
+// and the coarser levels of the whole map, or afterwards of the layers being finished, and the raster cache.
 Estimate estimate(const Plan& plan, const Terrain& terrain, const DomeLight& light, int jobs) {
   const GridFrame& frame = terrain.frame();
   const MapOptions options;
@@ -44,9 +44,12 @@ Estimate estimate(const Plan& plan, const Terrain& terrain, const DomeLight& lig
   const double per_cell = seconds / (double(side) * side) + 6e-9 * double(layers);
   out.seconds = per_cell * double(frame.size()) / std::min<double>(jobs, double(out.tiles)) + 1.0;
   const double working = std::min(tile * tile, double(frame.size()));
-  out.memory_mib =
-      (jobs * working * (400.0 + 8.0 * double(solver.columns())) + 1.4 * double(frame.size())) / 1048576.0 +
-      320.0;
+  const double percentiles = plan.output.percentiles ? 12.0 * double(light.periods.size() + 1) : 0.0;
+  const double solving =
+      jobs * working * (400.0 + 8.0 * double(solver.columns()) + percentiles) + 1.4 * double(frame.size());
+  // What a layer holds while it is finished, per cell: found by measuring, a little up.
+  const double finishing = std::min<double>(jobs, double(layers)) * 6.0 * double(frame.size());
+  out.memory_mib = std::max(solving, finishing) / 1048576.0 + 320.0;
   return out;
 }
 
