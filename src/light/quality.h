@@ -1,5 +1,5 @@
 #pragma once
-// Which readings can be light: published limits, closure, sensors that are stuck or dark by day.
+// Which readings can be light: published limits, closure, spikes, sensors that are stuck or dark by day.
 
 #include <string>
 #include <vector>
@@ -14,6 +14,7 @@ struct QualityTally {
   long impossible = 0;  // outside the physically possible limits
   long rare = 0;        // above the extremely rare limits; kept
   long open = 0;        // the parts do not sum to the whole
+  long spikes = 0;      // far from the readings before and after, to one side of both
   long stuck = 0;       // the same value for hours by day
   long dark = 0;        // no light for hours by day
   long judged = 0;      // readings by day

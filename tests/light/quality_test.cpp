@@ -72,6 +72,37 @@ TEST(Quality, RejectsTheImpossible) {
   EXPECT_THAT(notes, Contains(HasSubstr("2025: June")));
 }
 
+// One hour of a fair day that reads 1.3 times the sun above the air lies below what is physically
+// possible, 1.5 times and more, and half as far again from its neighbours as light moves.
+TEST(Quality, RejectsASpike) {
+  const auto notes = notes_with([](const std::string& stamp, const std::string& values) -> std::string {
+    const double noon_w = 1320.0 * std::sin((90.0 - 52.0 + 23.0) * 3.14159265 / 180.0);
+    return stamp == "2025-06-10T12:00" ? "," + std::to_string(1.3 * noon_w) : values;
+  });
+  EXPECT_THAT(notes, Contains(HasSubstr("1 that jump away from both neighbours")));
+  EXPECT_THAT(notes, Contains(HasSubstr("Journée and Bertrand 2011")));
+  EXPECT_THAT(notes, Contains(HasSubstr("2025: June")));
+}
+
+// By hand: an interval's light over that above the air, 1000 W m-2 throughout.
+TEST(Quality, TellsASpikeFromAStep) {
+  const auto spikes = [](std::vector<float> values, std::chrono::seconds step = std::chrono::seconds{600}) {
+    Readings readings;
+    readings.step = step;
+    for (std::size_t i = 0; i < values.size(); ++i)
+      readings.begin_s.push_back(std::int64_t(i) * step.count());
+    std::vector<IntervalSun> suns(values.size(), IntervalSun{0.73F, 1000.0F, 0.73F});
+    readings.value[kGlobal] = std::move(values);
+    return judge(readings, suns, 1.0).spikes;
+  };
+  EXPECT_EQ(spikes({200, 960, 200}), 1);
+  EXPECT_EQ(spikes({960, 200, 960}), 1);
+  EXPECT_EQ(spikes({200, 940, 200}), 0);
+  EXPECT_EQ(spikes({200, 200, 960, 960}), 0);                       // a cloud leaves
+  EXPECT_EQ(spikes({200, 960, 200}, std::chrono::seconds{60}), 0);  // minutes move farther
+  EXPECT_EQ(spikes({960, 200}), 0);
+}
+
 TEST(Quality, RejectsASensorThatStandsStill) {
   const auto notes = notes_with([](const std::string& stamp, const std::string& values) -> std::string {
     return stamp.substr(11) > "08" && stamp.substr(11) < "18" ? ",431.7" : values;
