@@ -5,20 +5,6 @@
 #include <numbers>
 
 namespace sunfall {
-namespace {
-
-SkyState sky_state(const LightSeries& series, std::size_t i, const SkyDirection& middle) {
-  SkyState state;
-  state.sky_w_m2 = series.steps[i].sky_w;
-  const double sine = std::max<double>(series.sun.mean_sine[i], 1e-3);
-  state.beam_normal_w_m2 = series.steps[i].beam_w / sine;
-  state.extraterrestrial_w_m2 = series.sun.normal_w_m2[i];
-  state.sun_zenith = Angle::radians(std::acos(std::clamp(middle.up, 0.0, 1.0)));
-  return state;
-}
-
-}  // namespace
-
 // The middle of a band is its middle in sine: bands are uniform in sine, and a band's share of the
 // level light of a uniform radiance is proportional to that middle exactly.
 SkyPatches::SkyPatches(const Dome& dome) {
@@ -75,6 +61,16 @@ SkyDirection middle_direction(const SkyDirection& a, const SkyDirection& b) {
   const SkyDirection d{a.east + b.east, a.north + b.north, a.up + b.up};
   const double length = std::sqrt(d.east * d.east + d.north * d.north + d.up * d.up);
   return {d.east / length, d.north / length, d.up / length};
+}
+
+SkyState sky_state(const LightSeries& series, std::size_t i, const SkyDirection& middle) {
+  SkyState state;
+  state.sky_w_m2 = series.steps[i].sky_w;
+  const double sine = std::max<double>(series.sun.mean_sine[i], 1e-3);
+  state.beam_normal_w_m2 = series.steps[i].beam_w / sine;
+  state.extraterrestrial_w_m2 = series.sun.normal_w_m2[i];
+  state.sun_zenith = Angle::radians(std::acos(std::clamp(middle.up, 0.0, 1.0)));
+  return state;
 }
 
 const std::vector<float>& sky_fractions(SkyPatches& patches, SkyModel sky, const LightSeries& series,

@@ -33,6 +33,9 @@ class SkyPatches {
 // The direction halfway between two.
 SkyDirection middle_direction(const SkyDirection& a, const SkyDirection& b);
 
+// The state of the sky over step i of a series; `middle` is where the sun then stands.
+SkyState sky_state(const LightSeries& series, std::size_t step, const SkyDirection& middle);
+
 // The sky of step i of a series, under the sky model of the plan.
 const std::vector<float>& sky_fractions(SkyPatches& patches, SkyModel sky, const LightSeries& series,
                                         std::size_t step);

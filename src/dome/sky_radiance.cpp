@@ -53,16 +53,8 @@ constexpr double kCoefficients[8][5][4] = {{{1.3525, -0.2576, -0.2690, -1.4366},
                                             {1.5000, -0.6426, 1.8564, 0.5636}}};
 
 // Where the published form holds, per class: see sky_radiance.h.
-struct Range {
-  double lowest, highest;
-};
-constexpr Range kSoundBrightness[8] = {{0.0, 0.6}, {0.2, 0.6},  {0.2, 0.6}, {0.2, 0.6},
-                                       {0.2, 0.6}, {0.08, 0.4}, {0.0, 0.4}, {0.0, 0.15}};
-
-int clearness_class(double clearness) {
-  return static_cast<int>(std::upper_bound(std::begin(kClassLimits), std::end(kClassLimits), clearness) -
-                          std::begin(kClassLimits));
-}
+constexpr SoundBrightness kSoundBrightness[kClearnessClasses] = {
+    {0.0, 0.6}, {0.2, 0.6}, {0.2, 0.6}, {0.2, 0.6}, {0.2, 0.6}, {0.08, 0.4}, {0.0, 0.4}, {0.0, 0.15}};
 
 double relative_air_mass(double zenith_deg) {
   return 1.0 / (std::cos(zenith_deg * std::numbers::pi / 180.0) +
@@ -70,6 +62,17 @@ double relative_air_mass(double zenith_deg) {
 }
 
 }  // namespace
+
+int clearness_class(double clearness) {
+  return static_cast<int>(std::upper_bound(std::begin(kClassLimits), std::end(kClassLimits), clearness) -
+                          std::begin(kClassLimits));
+}
+
+double class_floor(int clearness_class) {
+  return clearness_class == 0 ? 1.0 : kClassLimits[clearness_class - 1];
+}
+
+SoundBrightness sound_brightness(int clearness_class) { return kSoundBrightness[clearness_class]; }
 
 SkyIndices sky_indices(const SkyState& state) {
   const double zenith = std::clamp(state.sun_zenith.radians(), 0.0, std::numbers::pi / 2.0);

@@ -32,6 +32,17 @@ struct SkyIndices {
 };
 SkyIndices sky_indices(const SkyState& state);
 
+inline constexpr int kClearnessClasses = 8;
+// 0 to 7, and the lowest clearness of each.
+int clearness_class(double clearness);
+double class_floor(int clearness_class);
+// The brightness to which perez_shape() holds a class.
+struct SoundBrightness {
+  double lowest = 0.0;
+  double highest = 0.0;
+};
+SoundBrightness sound_brightness(int clearness_class);
+
 // The published parameters, with the brightness kept where they give a sky. Below, the horizon term
 // turns negative, or b positive so that exp(b / cos zenith) runs away; above, the same, or the glow
 // around the sun turns negative. Found by trying all suns: classes 2 to 5 fail below 0.1 to 0.15 and are

@@ -5,6 +5,7 @@
 #include <algorithm>
 #include <cmath>
 
+#include "core/parallel.h"
 #include "sunfall/error.h"
 
 namespace sunfall {
@@ -65,17 +66,32 @@ std::array<int, 12> days_of_months(const LightSeries& series) {
   return days;
 }
 
+namespace {
+
+void fill_photons(LightSeries& series, std::size_t i) {
+  LightStep& step = series.steps[i];
+  if (step.beam_w + step.sky_w <= 0.0F) {
+    step.beam_umol = step.sky_umol = 0.0F;
+    return;
+  }
+  const Angle elevation = Angle::radians(std::asin(std::clamp<double>(series.sun.mean_sine[i], 0.0, 1.0)));
+  const PhotonSplit split =
+      photons(step.beam_w, step.sky_w, extraterrestrial_level_w_m2(series, i), elevation);
+  step.beam_umol = static_cast<float>(split.beam_umol);
+  step.sky_umol = static_cast<float>(split.sky_umol);
+}
+
+}  // namespace
+
 void add_photons(LightSeries& series) {
+  on_all_cores(0, series.steps.size() / kStepsPerDay, [&](std::size_t day) {
+    for (std::size_t i = day * kStepsPerDay; i < (day + 1) * kStepsPerDay; ++i) fill_photons(series, i);
+  });
+  // In the order of the steps, whatever the number of cores.
   double sum_umol = 0.0;
   double sum_w = 0.0;
-  for (std::size_t i = 0; i < series.steps.size(); ++i) {
-    LightStep& step = series.steps[i];
-    const Angle elevation = Angle::radians(std::asin(std::clamp<double>(series.sun.mean_sine[i], 0.0, 1.0)));
-    const PhotonSplit split =
-        photons(step.beam_w, step.sky_w, extraterrestrial_level_w_m2(series, i), elevation);
-    step.beam_umol = static_cast<float>(split.beam_umol);
-    step.sky_umol = static_cast<float>(split.sky_umol);
-    sum_umol += split.beam_umol + split.sky_umol;
+  for (const LightStep& step : series.steps) {
+    sum_umol += static_cast<double>(step.beam_umol) + step.sky_umol;
     sum_w += static_cast<double>(step.beam_w) + step.sky_w;
   }
   if (sum_w > 0.0) {

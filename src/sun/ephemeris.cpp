@@ -8,6 +8,7 @@
 #include <array>
 #include <cmath>
 
+#include "core/parallel.h"
 #include "sun/delta_t.h"
 
 namespace sunfall {
@@ -79,34 +80,45 @@ double equinox_right_ascension_rad(double unix_s, const SolarCoordinates& sun) {
 SunPath::SunPath(UtcTime begin, UtcTime end) : first_node_s_(unix_seconds(begin) - kNodeSpacing_s) {
   const double gaps = std::max(0.0, (unix_seconds(end) - unix_seconds(begin)) / kNodeSpacing_s);
   const auto count = static_cast<std::size_t>(gaps) + 4;  // one before, two after
-  nodes_.reserve(count);
-  for (std::size_t i = 0; i < count; ++i) {
-    SolarCoordinates node = solar_coordinates(first_node_s_ + static_cast<double>(i) * kNodeSpacing_s);
-    if (i > 0) {
-      const double step = eraAnpm(node.ascension_rad - nodes_.back().ascension_rad);
-      node.ascension_rad = nodes_.back().ascension_rad + step;
-    }
-    nodes_.push_back(node);
+  nodes_.resize(count);
+  on_all_cores(0, count, [&](std::size_t i) {
+    nodes_[i] = solar_coordinates(first_node_s_ + static_cast<double>(i) * kNodeSpacing_s);
+  });
+  for (std::size_t i = 1; i < count; ++i) {
+    const double step = eraAnpm(nodes_[i].ascension_rad - nodes_[i - 1].ascension_rad);
+    nodes_[i].ascension_rad = nodes_[i - 1].ascension_rad + step;
   }
 }
 
-SolarCoordinates SunPath::at(double unix_s) const {
+SunPath::Stencil SunPath::stencil(double unix_s) const {
   const double position = (unix_s - first_node_s_) / kNodeSpacing_s;
   const auto last = static_cast<double>(nodes_.size() - 3);
   const double left = std::clamp(std::floor(position), 1.0, last);
   const double t = position - left;
   // Lagrange weights of the nodes at -1, 0, 1 and 2.
-  const std::array<double, 4> weight{-t * (t - 1.0) * (t - 2.0) / 6.0,
-                                     (t + 1.0) * (t - 1.0) * (t - 2.0) / 2.0,
-                                     -(t + 1.0) * t * (t - 2.0) / 2.0, (t + 1.0) * t * (t - 1.0) / 6.0};
+  return {static_cast<std::size_t>(left) - 1,
+          {-t * (t - 1.0) * (t - 2.0) / 6.0, (t + 1.0) * (t - 1.0) * (t - 2.0) / 2.0,
+           -(t + 1.0) * t * (t - 2.0) / 2.0, (t + 1.0) * t * (t - 1.0) / 6.0}};
+}
+
+SolarCoordinates SunPath::at(double unix_s) const {
+  const Stencil stencil = this->stencil(unix_s);
   SolarCoordinates sun{0.0, 0.0, 0.0};
-  for (std::size_t k = 0; k < weight.size(); ++k) {
-    const SolarCoordinates& node = nodes_[static_cast<std::size_t>(left) - 1 + k];
-    sun.ascension_rad += weight[k] * node.ascension_rad;
-    sun.declination_rad += weight[k] * node.declination_rad;
-    sun.distance_au += weight[k] * node.distance_au;
+  for (std::size_t k = 0; k < stencil.weight.size(); ++k) {
+    const SolarCoordinates& node = nodes_[stencil.first + k];
+    sun.ascension_rad += stencil.weight[k] * node.ascension_rad;
+    sun.declination_rad += stencil.weight[k] * node.declination_rad;
+    sun.distance_au += stencil.weight[k] * node.distance_au;
   }
   return sun;
+}
+
+double SunPath::distance_au(double unix_s) const {
+  const Stencil stencil = this->stencil(unix_s);
+  double distance_au = 0.0;
+  for (std::size_t k = 0; k < stencil.weight.size(); ++k)
+    distance_au += stencil.weight[k] * nodes_[stencil.first + k].distance_au;
+  return distance_au;
 }
 
 }  // namespace sunfall

@@ -1,6 +1,8 @@
 #pragma once
 // The sun as seen from the Earth's centre, in the frame that turns with the Earth.
 
+#include <array>
+#include <cstddef>
 #include <string>
 #include <vector>
 
@@ -43,8 +45,17 @@ class SunPath {
   SunPath(UtcTime begin, UtcTime end);
   // Within [begin, end] of the constructor. The ascension is unwrapped.
   SolarCoordinates at(double unix_s) const;
+  // Its distance alone.
+  double distance_au(double unix_s) const;
 
  private:
+  // Where in `nodes_` a moment lies, and the weights of the four nodes around it.
+  struct Stencil {
+    std::size_t first = 0;
+    std::array<double, 4> weight{};
+  };
+  Stencil stencil(double unix_s) const;
+
   double first_node_s_ = 0.0;
   std::vector<SolarCoordinates> nodes_;
 };
