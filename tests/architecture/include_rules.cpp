@@ -53,6 +53,7 @@ const std::vector<FolderRule>& folder_rules() {
 
 std::string owner_of_public_header(const std::string& file_name) {
   const std::string stem = file_name.substr(0, file_name.find('.'));
+  if (stem == "rows") return "shade";
   return find_rule(stem) ? stem : "core";
 }
 
