@@ -82,6 +82,16 @@ TEST(Station, FaultsHaveTheirMessages) {
   refused(hours().substr(0, hours().find("2025-09-15")), kColumns, 3,
           {"more than 10 % of a month's daylight is missing", "December 100.0 %", "allow_gaps"});
   refused(hours() + "2025-06-01T12:00,5,5\n", kColumns, 3, {"station.csv:8762", "go backward"});
+  const auto changed = [](const std::string& from, const std::string& to) {
+    std::string record = hours();
+    return record.replace(record.find(from), from.size(), to);
+  };
+  refused(changed("2025-02-28T12:00", "2025-02-29T12:00"), kColumns, 3,
+          {"the time stamp cannot be read", "2025-02-29T12:00"});
+  refused(changed("2025-06-01T13:00", "2025-06-01T12:00"), kColumns, 3,
+          {"the same time comes twice with different values", "2025-06-01T12:00"});
+  refused(logged(truth(), {.columns = "gd", .clock_error_min = 120}), kColumns, 3,
+          {"the record's clock is wrong by about 2 hours"});
   refused("time,ghi,dhi\n2025-10-26T02:00,0,0\n2025-10-26T03:00,0,0\n2025-10-26T03:00,0,0\n", kColumns, 3,
           {"station.csv:4", "daylight saving time"});
 }
