@@ -52,14 +52,41 @@ std::array<int, 12> days_of_months(const LightSeries& series);
 struct ClearSource {
   std::array<double, 12> linke_turbidity{3, 3, 3, 3, 3, 3, 3, 3, 3, 3, 3, 3};
 };
+// How days, or mean days of months, of which only the global is known are split into beam and sky.
+enum class DaySplit { erbs, collares_pereira };
+
 // Monthly mean of daily global radiation, MJ m-2 d-1, January to December.
 struct MonthlyGlobalSource {
+  enum class Days { mean, varied };  // every day of a month equally clear, or dull and bright ones
+
   std::array<double, 12> global_mj_m2_d{};
+  DaySplit split = DaySplit::erbs;
+  Days days = Days::mean;
+  // Of varied days only.
+  int years = 1;              // from LightOptions::year on, each with the given means and days of its own
+  int seed = 1;               // other seeds, other days
+  double persistence = 0.29;  // how much a day is like the one before, 0 to 0.9
 };
-// A station's or a sensor's record in a CSV file, at equal steps of 1 minute to 1 hour.
+// A station's or a sensor's record in a CSV file, at equal steps of 1 minute to 1 hour or of one day.
 struct SeriesSource {
-  enum class Stamp { begin, middle, end };  // what of its interval a time stamp names
-  enum class Unit { w_m2, j_m2, j_cm2, kj_m2, mj_m2, wh_m2, kwh_m2, umol_m2_s };  // energies: per step
+  // What of its interval a time stamp names; `day`: stamps are dates and name whole days of local
+  // standard time.
+  enum class Stamp { begin, middle, end, day };
+  // Energies are sums over one step; those per day go with Stamp::day.
+  enum class Unit {
+    w_m2,
+    j_m2,
+    j_cm2,
+    kj_m2,
+    mj_m2,
+    wh_m2,
+    kwh_m2,
+    umol_m2_s,
+    j_cm2_d,
+    mj_m2_d,
+    kwh_m2_d,
+    mol_m2_d
+  };
   enum class Split { logistic, erbs };  // beam and sky of an hour of which only the global is known
 
   std::filesystem::path file;
@@ -73,8 +100,9 @@ struct SeriesSource {
   char decimal = '.';     // or ','
   bool utc = false;       // stamps without an offset are UTC, not the clock's standard time
   Split split = Split::logistic;
-  bool allow_gaps = false;   // fill months of which more than a tenth is missing
-  bool trust_clock = false;  // take the stamps as they are, however the light of clear days lies
+  DaySplit day_split = DaySplit::erbs;  // with Stamp::day
+  bool allow_gaps = false;              // fill months of which more than a tenth is missing
+  bool trust_clock = false;             // take the stamps as they are, however the light of clear days lies
 };
 // A gridded weather file (NetCDF, GRIB): the record of the point where the farm lies.
 struct GridSource {
@@ -96,7 +124,31 @@ struct GridSource {
   bool allow_gaps = false;
   bool trust_clock = false;
 };
-using LightSource = std::variant<ClearSource, MonthlyGlobalSource, SeriesSource, GridSource>;
+// Where the dates and values of a daily record stand in its CSV file.
+struct DaysFile {
+  std::filesystem::path file;
+  std::string time = "date";  // the column of dates
+  char delimiter = '\0';      // '\0': found out
+  char decimal = '.';         // or ','
+};
+// Hours of bright sunshine of each day: Angstrom and Prescott, FAO-56 eq. 35.
+struct SunshineSource : DaysFile {
+  std::string hours = "sunshine_hours";
+  double a_s = 0.25;  // clearness of a day without sun
+  double b_s = 0.50;  // what a day full of sun adds
+  DaySplit split = DaySplit::erbs;
+  bool allow_gaps = false;
+};
+// Lowest and highest air temperature of each day, degrees Celsius: Hargreaves, FAO-56 eq. 50.
+struct TemperatureSource : DaysFile {
+  std::string t_min = "t_min";
+  std::string t_max = "t_max";
+  double k_rs = 0.16;  // interior; 0.19 at a coast
+  DaySplit split = DaySplit::erbs;
+  bool allow_gaps = false;
+};
+using LightSource = std::variant<ClearSource, MonthlyGlobalSource, SeriesSource, GridSource, SunshineSource,
+                                 TemperatureSource>;
 
 // The files that a source reads.
 std::vector<std::filesystem::path> files_of(const LightSource& source);

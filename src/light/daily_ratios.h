@@ -1,7 +1,8 @@
 #pragma once
-// From a month's clearness to its beam and sky, and from a day's sum to its course.
+// From a month's or a day's clearness to its beam and sky, and from a day's sum to its course.
 
 #include "sunfall/angle.h"
+#include "sunfall/light.h"
 
 namespace sunfall {
 
@@ -12,6 +13,22 @@ Angle sunset_hour_angle(Angle latitude, Angle declination);
 // Published for clearness 0.3 to 0.8: below, the polynomial goes on and is capped at 1, which it
 // meets near 0.13; above, its value at 0.8 is held.
 double erbs_monthly_diffuse_part(double clearness, Angle sunset_hour_angle);
+
+// The same by Collares-Pereira and Rabl (1979), with angles in radians:
+// 0.775 + 0.347 (ws − π/2) − [0.505 + 0.261 (ws − π/2)] cos(2 (K − 0.9)).
+double collares_pereira_monthly_diffuse_part(double clearness, Angle sunset_hour_angle);
+
+// Diffuse part of one day's global radiation by its clearness, Erbs, Klein and Duffie (1982), for sunset
+// before and after 81.4 degrees. The second polynomial rises to 1.008 at a clearness of 0.06 and is capped.
+double erbs_daily_diffuse_part(double clearness, Angle sunset_hour_angle);
+
+// The same by Collares-Pereira and Rabl (1979), all seasons alike. Of the two values in print for the cubic
+// coefficient, −21.856 is the one that meets the next piece at 0.75.
+double collares_pereira_daily_diffuse_part(double clearness);
+
+double daily_diffuse_part(DaySplit split, double clearness, Angle sunset_hour_angle);
+double monthly_diffuse_part(DaySplit split, double clearness, Angle sunset_hour_angle);
+const char* name_of(DaySplit split);  // "Erbs, Klein and Duffie (1982)"
 
 // By how much global radiation at an hour angle exceeds, relative to the day, a course that follows
 // the sine of the sun's elevation: Collares-Pereira and Rabl (1979), a + b cos ω. Their hourly ratio

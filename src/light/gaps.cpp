@@ -172,4 +172,23 @@ bool fill_gaps(StepLight& steps, const LightSeries& series) {
   return all;
 }
 
+void fill_and_note(StepLight& steps, bool allow_gaps, const std::string& file, LightSeries& series) {
+  const std::vector<MonthGaps> months = count_gaps(steps, series);
+  check_gaps(months, allow_gaps, file);
+  const std::string text = gaps_text(months);
+  if (text.empty()) return;
+  if (!fill_gaps(steps, series)) {
+    throw Error(ErrorKind::data,
+                {.what = "gaps cannot be filled: no day within 15 days, in any year, has light "
+                         "at that time",
+                 .where = file,
+                 .found = text,
+                 .remedy = "give a record of at least one whole year"});
+  }
+  series.notes.push_back(
+      "missing daylight was filled with the mean clearness of the same time on the days "
+      "around, or in other years: " +
+      text);
+}
+
 }  // namespace sunfall

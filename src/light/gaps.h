@@ -25,6 +25,9 @@ void check_gaps(const std::vector<MonthGaps>& months, bool allowed, const std::s
 // else of its own day. Returns false where there is nothing to fill from.
 bool fill_gaps(StepLight& steps, const LightSeries& series);
 
+// Counts, checks and fills; notes in the series what was filled.
+void fill_and_note(StepLight& steps, bool allow_gaps, const std::string& file, LightSeries& series);
+
 // "2019: January 3.2 %, May 0.1 %"; empty without a gap.
 std::string gaps_text(const std::vector<MonthGaps>& months);
 

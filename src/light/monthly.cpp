@@ -8,7 +8,8 @@
 
 #include "light/clear.h"
 #include "light/daily_ratios.h"
-#include "light/sky_split.h"
+#include "light/day_course.h"
+#include "light/varied_days.h"
 #include "sunfall/error.h"
 
 namespace sunfall {
@@ -83,79 +84,8 @@ void note_oddities(const Months& given, const Months& extraterrestrial, LightSer
   }
 }
 
-// The sun of one step in the frame of the equator: hour angle and declination.
-struct StepSun {
-  Angle hour_angle;
-  Angle declination;
-};
-
-StepSun sun_of_step(const LightSeries& series, std::size_t step) {
-  const SkyDirection& left = series.sun.edges[step];
-  const SkyDirection& right = series.sun.edges[step + 1];
-  const double east = 0.5 * (left.east + right.east);
-  const double north = 0.5 * (left.north + right.north);
-  const double up = 0.5 * (left.up + right.up);
-  const Angle latitude = series.place.latitude;
-  return {Angle::radians(std::atan2(-east, up * cos(latitude) - north * sin(latitude))),
-          Angle::radians(std::asin(std::clamp(up * sin(latitude) + north * cos(latitude), -1.0, 1.0)))};
-}
-
-// Declination in the middle of a day, clear of refraction where the sun is up.
-Angle declination_of_day(const LightSeries& series, std::size_t day) {
-  const auto first = series.sun.mean_sine.begin() + static_cast<std::ptrdiff_t>(day * kStepsPerDay);
-  const auto highest = std::max_element(first, first + kStepsPerDay);
-  const auto step = static_cast<std::size_t>(highest - series.sun.mean_sine.begin());
-  return sun_of_step(series, step).declination;
-}
-
-// One day's course: its sum over the steps by Collares-Pereira and Rabl, renormalised, the diffuse
-// part along the sine of elevation (Liu and Jordan) as far as the steps can hold it.
-class DayCourse {
- public:
-  DayCourse(LightSeries& series, std::size_t day) : series_(series), first_(day * kStepsPerDay) {}
-
-  void fill(double global_w_steps, double diffuse_part, Angle sunset) {
-    std::array<StepShare, kStepsPerDay> shares;
-    const std::array<double, kStepsPerDay> weights = global_weights(sunset);
-    const double weight_sum = std::accumulate(weights.begin(), weights.end(), 0.0);
-    if (weight_sum <= 0.0) return;
-    for (std::size_t i = 0; i < kStepsPerDay; ++i) {
-      const double global_w = global_w_steps * weights[i] / weight_sum;
-      const double above_air_w = extraterrestrial_level_w_m2(series_, first_ + i);
-      shares[i] = {series_.sun.mean_sine[first_ + i], std::max(0.0, global_w - above_air_w), global_w};
-    }
-    const std::vector<double> sky_w = spread_sky(shares, diffuse_part * global_w_steps);
-    for (std::size_t i = 0; i < kStepsPerDay; ++i) {
-      series_.steps[first_ + i].sky_w = static_cast<float>(sky_w[i]);
-      series_.steps[first_ + i].beam_w = static_cast<float>(shares[i].most - sky_w[i]);
-    }
-  }
-
- private:
-  std::array<double, kStepsPerDay> global_weights(Angle sunset) const {
-    std::array<double, kStepsPerDay> weights{};
-    for (std::size_t i = 0; i < kStepsPerDay; ++i) {
-      const double mean_sine = series_.sun.mean_sine[first_ + i];
-      if (mean_sine <= 0.0) continue;
-      weights[i] = mean_sine * collares_pereira_rabl(sun_of_step(series_, first_ + i).hour_angle, sunset);
-    }
-    return weights;
-  }
-
-  LightSeries& series_;
-  std::size_t first_;
-};
-
-double extraterrestrial_w_steps(const LightSeries& series, std::size_t day) {
-  double sum_w = 0.0;
-  for (std::size_t i = day * kStepsPerDay; i < (day + 1) * kStepsPerDay; ++i) {
-    sum_w += extraterrestrial_level_w_m2(series, i);
-  }
-  return sum_w;
-}
-
-// Erbs's split of each month at the sunset of its mean declination.
-Months diffuse_parts(const LightSeries& series, const Months& clearness) {
+// The split of each month's mean day, at the sunset of its mean declination.
+Months diffuse_parts(const LightSeries& series, DaySplit split, const Months& clearness) {
   Months declination_sum_rad{};
   const std::vector<int> months = months_of_days(series);
   for (std::size_t day = 0; day < months.size(); ++day) {
@@ -165,39 +95,102 @@ Months diffuse_parts(const LightSeries& series, const Months& clearness) {
   Months parts{};
   for (std::size_t month = 0; month < 12; ++month) {
     const Angle declination = Angle::radians(declination_sum_rad[month] / days[month]);
-    parts[month] =
-        erbs_monthly_diffuse_part(clearness[month], sunset_hour_angle(series.place.latitude, declination));
+    const Angle sunset = sunset_hour_angle(series.place.latitude, declination);
+    parts[month] = monthly_diffuse_part(split, clearness[month], sunset);
   }
   return parts;
+}
+
+StepLight mean_days(const MonthlyGlobalSource& source, const Months& extraterrestrial,
+                    const LightSeries& series) {
+  Months clearness{};
+  for (std::size_t month = 0; month < 12; ++month) {
+    if (extraterrestrial[month] > 0.0)
+      clearness[month] = std::min(1.0, source.global_mj_m2_d[month] / extraterrestrial[month]);
+  }
+  const Months diffuse = diffuse_parts(series, source.split, clearness);
+  StepLight steps = unknown_steps(series);
+  const std::vector<int> months = months_of_days(series);
+  for (std::size_t day = 0; day < months.size(); ++day) {
+    const auto month = static_cast<std::size_t>(months[day]);
+    const double global = clearness[month] * above_air_of_day(series, day);
+    lay_global(steps, series, day, global);
+    lay_sky(steps, series, day, diffuse[month] * global);
+  }
+  return steps;
+}
+
+// Each month of each year gets days of its own, of which the mean is the one given.
+StepLight varied_days(const MonthlyGlobalSource& source, const LightSeries& series) {
+  ClearnessMaker maker(source.seed, source.persistence);
+  StepLight steps = unknown_steps(series);
+  const std::vector<int> months = months_of_days(series);
+  for (std::size_t first = 0; first < months.size();) {
+    std::vector<double> above_air;
+    for (std::size_t day = first; day < months.size() && months[day] == months[first]; ++day) {
+      above_air.push_back(above_air_of_day(series, day));
+    }
+    const double sum = std::accumulate(above_air.begin(), above_air.end(), 0.0);
+    const double given = source.global_mj_m2_d[static_cast<std::size_t>(months[first])] *
+                         static_cast<double>(above_air.size()) / kMegajoulePerWattStep;
+    const double mean = sum > 0.0 ? std::min(1.0, given / sum) : 0.0;
+    const std::vector<double> clearness = maker.month(mean, above_air);
+    for (std::size_t k = 0; k < above_air.size(); ++k) {
+      const std::size_t day = first + k;
+      const double global = clearness[k] * above_air[k];
+      lay_global(steps, series, day, global);
+      lay_sky(steps, series, day,
+              daily_diffuse_part(source.split, clearness[k], sunset_of_day(series, day)) * global);
+    }
+    first += above_air.size();
+  }
+  return steps;
+}
+
+void describe(const MonthlyGlobalSource& source, LightSeries& series) {
+  if (source.days == MonthlyGlobalSource::Days::mean) {
+    series.description = "monthly means of daily global radiation, every day of a month equally clear";
+    series.notes.push_back(
+        fmt::format("monthly means hold no dull and bright days: beam and sky are those of the mean day ({})",
+                    name_of(source.split)));
+    return;
+  }
+  series.description =
+      fmt::format("monthly means of daily global radiation, with made days that vary (seed {}, {} year{})",
+                  source.seed, source.years, source.years == 1 ? "" : "s");
+  series.notes.push_back(fmt::format(
+      "the days are made, not measured: each month's follow the distribution of Bendt, Collares-Pereira and "
+      "Rabl (1981) for its mean clearness, a day is like the one before by {:g}, seed {}; every month of "
+      "every "
+      "year keeps the given mean, so that months and years differ less than real ones. Beam and sky of each "
+      "day by {}",
+      source.persistence, source.seed, name_of(source.split)));
+}
+
+// A program may ask for what no plan can.
+void check_days(const MonthlyGlobalSource& source, const LightRequest& request) {
+  const bool good = source.years >= 1 && source.persistence >= 0.0 && source.persistence <= 0.9;
+  if (good) return;
+  throw Error(ErrorKind::plan,
+              {.what = "days cannot be made so",
+               .where = request.where,
+               .found = fmt::format("{} years, persistence {:g}", source.years, source.persistence),
+               .remedy = "give at least one year, and a persistence from 0 to 0.9"});
 }
 
 }  // namespace
 
 LightSeries make_series(const MonthlyGlobalSource& source, const LightRequest& request) {
-  const Months& given = source.global_mj_m2_d;
-  LightSeries series = open_series(request);
+  const bool varied = source.days == MonthlyGlobalSource::Days::varied;
+  if (varied) check_days(source, request);
+  LightSeries series = varied ? open_series(request, std::chrono::year{request.options.year}, source.years)
+                              : open_series(request);
   const Months extraterrestrial = monthly_mean_mj_m2_d(
       series, [&series](std::size_t i) { return extraterrestrial_level_w_m2(series, i); });
-  check(given, extraterrestrial, request);
-  note_oddities(given, extraterrestrial, series);
-
-  Months clearness{};
-  for (std::size_t month = 0; month < 12; ++month) {
-    if (extraterrestrial[month] > 0.0)
-      clearness[month] = std::min(1.0, given[month] / extraterrestrial[month]);
-  }
-  const Months diffuse = diffuse_parts(series, clearness);
-  const std::vector<int> months = months_of_days(series);
-  for (std::size_t day = 0; day < months.size(); ++day) {
-    const auto month = static_cast<std::size_t>(months[day]);
-    const Angle sunset = sunset_hour_angle(series.place.latitude, declination_of_day(series, day));
-    DayCourse(series, day)
-        .fill(clearness[month] * extraterrestrial_w_steps(series, day), diffuse[month], sunset);
-  }
-  series.description = "monthly means of daily global radiation, every day of a month equally clear";
-  series.notes.push_back(
-      "monthly means hold no dull and bright days: beam and sky are those of the mean day (Erbs and others "
-      "1982)");
+  check(source.global_mj_m2_d, extraterrestrial, request);
+  note_oddities(source.global_mj_m2_d, extraterrestrial, series);
+  write_steps(varied ? varied_days(source, series) : mean_days(source, extraterrestrial, series), series);
+  describe(source, series);
   add_photons(series);
   return series;
 }

@@ -46,6 +46,11 @@ LightSeries open_series(const LightRequest& request, std::chrono::year first_yea
   return series;
 }
 
+std::string years_text(const LightSeries& series) {
+  const int last = int{series.first_year} + series.years - 1;
+  return series.years == 1 ? fmt::format("{}", last) : fmt::format("{} to {}", int{series.first_year}, last);
+}
+
 std::vector<int> months_of_days(const LightSeries& series) {
   std::vector<int> months(series.steps.size() / kStepsPerDay);
   for (std::size_t day = 0; day < months.size(); ++day) {

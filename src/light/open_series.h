@@ -26,6 +26,9 @@ LightSeries open_series(const LightRequest& request);
 // The same over several calendar years.
 LightSeries open_series(const LightRequest& request, std::chrono::year first_year, int years);
 
+// "2025" or "2019 to 2024".
+std::string years_text(const LightSeries& series);
+
 // Months (0-11) of the series' days.
 std::vector<int> months_of_days(const LightSeries& series);
 

@@ -182,8 +182,7 @@ constexpr std::size_t kLeastReadings = 50;
 
 std::string check_unit(const Readings& readings, const std::vector<IntervalSun>& suns,
                        SeriesSource::Unit unit) {
-  const double watts =
-      unit == SeriesSource::Unit::umol_m2_s ? kRough_w_umol : flux_per_unit(unit, readings.step);
+  const double watts = rough_w_per_unit(unit, readings.step);
   std::vector<double> clearness;
   for (std::size_t i = 0; i < readings.size(); ++i) {
     if (suns[i].level_w < kHighSun_w_m2) continue;

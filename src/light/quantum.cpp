@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <cmath>
 
+#include "light/open_series.h"
 #include "light/photons.h"
 
 namespace sunfall {
@@ -27,6 +28,27 @@ double diffuse_part_of_radiation(double part_of_photons) {
     diffuse = std::clamp(diffuse - (diffuse_part_of_photons(diffuse) - part) / slope, 0.0, 1.0);
   }
   return diffuse;
+}
+
+namespace {
+
+Angle elevation_of_step(const LightSeries& series, std::size_t i) {
+  return Angle::radians(std::asin(std::clamp<double>(series.sun.mean_sine[i], 0.0, 1.0)));
+}
+
+}  // namespace
+
+void photons_to_watts(StepLight& steps, const LightSeries& series) {
+  for (std::size_t i = 0; i < steps.global.size(); ++i) {
+    const double global_umol = steps.global[i];
+    if (std::isnan(global_umol)) continue;
+    const double global_w = global_of_photons_w(global_umol, extraterrestrial_level_w_m2(series, i),
+                                                elevation_of_step(series, i));
+    steps.global[i] = static_cast<float>(global_w);
+    if (std::isnan(steps.sky[i])) continue;
+    const double part = global_umol > 0.0 ? diffuse_part_of_radiation(steps.sky[i] / global_umol) : 1.0;
+    steps.sky[i] = static_cast<float>(part * global_w);
+  }
 }
 
 }  // namespace sunfall

@@ -3,13 +3,13 @@
 #include <fmt/format.h>
 
 #include <algorithm>
-#include <charconv>
 #include <cmath>
 #include <limits>
 #include <map>
 #include <optional>
 
 #include "light/csv_file.h"
+#include "light/csv_value.h"
 #include "light/time_stamp.h"
 #include "sunfall/error.h"
 
@@ -17,41 +17,15 @@ namespace sunfall {
 namespace {
 
 constexpr float kNone = std::numeric_limits<float>::quiet_NaN();
-constexpr long kMostLinesBelowHeader = 4;  // units and the like between names and values
 constexpr std::int64_t kHour_s = 3600;
 constexpr double kLargest = 1e9;        // J m-2 of an hour are below 1e7
 constexpr std::int64_t kMostGaps = 10;  // the record's length is at most so many times its readings
-
-bool is_missing(std::string_view text) {
-  for (const char* word : {"", "NaN", "nan", "NAN", "NA", "N/A", "null", "NULL", "None", "-", "--"}) {
-    if (text == word) return true;
-  }
-  return false;
-}
-
-// The numbers that loggers and archives write for "none".
-bool is_missing(double value) {
-  for (const double mark : {-999.0, -9999.0, -99999.0, -999.9, -9999.9, -6999.0, -7999.0}) {
-    if (value == mark) return true;
-  }
-  return !std::isfinite(value);
-}
-
-// "one line was", "3 lines were".
-std::string lines_were(long count) {
-  return count == 1 ? "one line was" : fmt::format("{} lines were", count);
-}
 
 class ReadingsReader {
  public:
   ReadingsReader(const SeriesSource& source, const Clock& clock)
       : source_(source), clock_(clock), csv_(source.file, {source.delimiter, columns(source)}) {
-    if (source.decimal == csv_.delimiter()) {
-      throw Error(ErrorKind::data, {.what = "the decimal mark and the delimiter are the same",
-                                    .where = source.file.string(),
-                                    .found = shown_text(std::string(1, source.decimal)),
-                                    .remedy = "save it with another delimiter"});
-    }
+    check_decimal(csv_, source.decimal, source.file.string());
     readings_.file = source.file.string();
   }
 
@@ -63,15 +37,18 @@ class ReadingsReader {
         add(*stamp);
       } else if (readings_.size() > 0 || ++below_header > kMostLinesBelowHeader) {
         refuse("the time stamp cannot be read", shown_text(csv_.field(0)),
-               "write ISO 8601, 2025-06-01T12:00 or 2025-06-01T12:00+01:00");
+               "write ISO 8601, 2025-06-01T12:00 or 2025-06-01T12:00+01:00; dates alone are the stamps of a "
+               "daily record, stamp = \"day\"");
       }
     }
     if (readings_.size() < 2) {
-      throw Error(ErrorKind::data,
-                  {.what = "the file holds no record",
-                   .where = readings_.file,
-                   .found = fmt::format("{} lines with a time stamp", readings_.size()),
-                   .remedy = "write ISO 8601, 2025-06-01T12:00, in the column of time stamps"});
+      throw Error(
+          ErrorKind::data,
+          {.what = "the file holds no record",
+           .where = readings_.file,
+           .found = fmt::format("{} lines with a time stamp", readings_.size()),
+           .remedy = "write ISO 8601, 2025-06-01T12:00, in the column of time stamps; dates alone are "
+                     "the stamps of a daily record, stamp = \"day\""});
     }
     finish(below_header);
     return std::move(readings_);
@@ -153,21 +130,11 @@ class ReadingsReader {
 
   float number(std::string_view text) {
     if (is_missing(text)) return kNone;
-    std::string_view digits = text;
-    if (source_.decimal == ',') {
-      scratch_.assign(text);
-      std::replace(scratch_.begin(), scratch_.end(), ',', '.');
-      if (text.find('.') == std::string_view::npos) digits = scratch_;
+    const std::optional<double> found = number_in(text, source_.decimal);
+    if (!found) {
+      refuse("a value is not a number", shown_text(text), number_remedy(text, source_.decimal));
     }
-    if (digits.front() == '+') digits.remove_prefix(1);
-    double value = 0.0;
-    const auto [end, fault] = std::from_chars(digits.data(), digits.data() + digits.size(), value);
-    if (fault != std::errc{} || end != digits.data() + digits.size()) {
-      const bool comma = source_.decimal == '.' && text.find(',') != std::string_view::npos;
-      refuse(
-          "a value is not a number", shown_text(text),
-          comma ? "give decimal = \",\" in the plan" : "leave a missing value empty, or write NaN or -9999");
-    }
+    const double value = *found;
     if (is_missing(value)) return kNone;
     if (std::abs(value) > kLargest) refuse("a value is beyond any unit", shown_text(text), "");
     return static_cast<float>(value);
@@ -195,10 +162,12 @@ class ReadingsReader {
                                        [](const auto& a, const auto& b) { return a.second < b.second; });
     const std::int64_t step_s = most->first;
     if (step_s < 60 || step_s > kHour_s || step_s % 60 != 0) {
-      throw Error(ErrorKind::data, {.what = "the record's step must be whole minutes, from 1 to 60",
-                                    .where = readings_.file,
-                                    .found = fmt::format("{} seconds between most lines", step_s),
-                                    .remedy = "average it to 10 minutes or an hour"});
+      throw Error(ErrorKind::data,
+                  {.what = "the record's step must be whole minutes, from 1 to 60",
+                   .where = readings_.file,
+                   .found = fmt::format("{} seconds between most lines", step_s),
+                   .remedy = step_s == 86400 ? "is it a daily record? Then give stamp = \"day\""
+                                             : "average it to 10 minutes or an hour"});
     }
     for (std::size_t i = 1; i < readings_.size(); ++i) {
       const std::int64_t gap_s = readings_.begin_s[i] - readings_.begin_s[i - 1];
@@ -231,13 +200,7 @@ class ReadingsReader {
                                 : source_.stamp == SeriesSource::Stamp::middle ? step_s / 2
                                                                                : step_s;
     for (std::int64_t& begin_s : readings_.begin_s) begin_s -= back_s;
-    if (below_header > 0) {
-      readings_.notes.push_back(lines_were(below_header) +
-                                " left out, below the header and without a time stamp");
-    }
-    if (repeated_ > 0) {
-      readings_.notes.push_back(lines_were(repeated_) + " left out that repeated the one before");
-    }
+    note_lines_left_out(below_header, repeated_, readings_.notes);
   }
 
   const SeriesSource& source_;
@@ -245,12 +208,22 @@ class ReadingsReader {
   CsvFile csv_;
   Readings readings_;
   std::map<int, std::int64_t> offsets_s_;
-  std::string scratch_;
   long repeated_ = 0;
   bool wall_ = false;  // some stamps are the clock's own
 };
 
 }  // namespace
+
+std::string quantities_text(const Readings& readings) {
+  std::string text;
+  const auto add = [&](std::size_t quantity, const char* name) {
+    if (readings.has(quantity)) text += (text.empty() ? "" : ", ") + std::string(name);
+  };
+  add(kGlobal, "global");
+  add(kDiffuse, "diffuse");
+  add(kBeam, "beam");
+  return text;
+}
 
 Readings read_readings(const SeriesSource& source, const Clock& clock) {
   return ReadingsReader(source, clock).read();

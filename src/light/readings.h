@@ -28,6 +28,9 @@ struct Readings {
   bool has(std::size_t quantity) const { return !value[quantity].empty(); }
 };
 
+// "global, diffuse".
+std::string quantities_text(const Readings& readings);
+
 // Throws Error(data) for stamps that cannot be read, come twice with different values, go backward,
 // follow daylight saving time or are not equally spaced, and for values that are no numbers.
 Readings read_readings(const SeriesSource& source, const Clock& clock);

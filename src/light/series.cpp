@@ -6,6 +6,7 @@
 #include <cmath>
 
 #include "light/clock_check.h"
+#include "light/daily_series.h"
 #include "light/flux_unit.h"
 #include "light/gaps.h"
 #include "light/quality.h"
@@ -21,8 +22,6 @@ constexpr std::int64_t kDay_s = 86400;
 // Twilight stays below, and a fault of some nights is no reason to refuse a year.
 constexpr double kMostAtNight_w_m2 = 20.0;
 constexpr double kMostLitNights = 0.05;
-
-bool is_quantum(const SeriesSource& source) { return source.unit == SeriesSource::Unit::umol_m2_s; }
 
 std::chrono::year year_of(std::int64_t local_s) {
   const std::chrono::sys_seconds time{std::chrono::seconds{local_s}};
@@ -63,47 +62,10 @@ void check_night(const Readings& readings, const std::vector<IntervalSun>& suns,
                                           "on the sensor"});
 }
 
-Angle elevation_of_step(const LightSeries& series, std::size_t i) {
-  return Angle::radians(std::asin(std::clamp<double>(series.sun.mean_sine[i], 0.0, 1.0)));
-}
-
-void photons_to_watts(StepLight& steps, const LightSeries& series) {
-  for (std::size_t i = 0; i < steps.global.size(); ++i) {
-    const double global_umol = steps.global[i];
-    if (std::isnan(global_umol)) continue;
-    const double global_w = global_of_photons_w(global_umol, extraterrestrial_level_w_m2(series, i),
-                                                elevation_of_step(series, i));
-    steps.global[i] = static_cast<float>(global_w);
-    if (std::isnan(steps.sky[i])) continue;
-    const double part = global_umol > 0.0 ? diffuse_part_of_radiation(steps.sky[i] / global_umol) : 1.0;
-    steps.sky[i] = static_cast<float>(part * global_w);
-  }
-}
-
-// Global is kept to the last bit; a beam above the sun's own becomes sky.
-void write_steps(const StepLight& steps, LightSeries& series) {
-  for (std::size_t i = 0; i < steps.global.size(); ++i) {
-    if (std::isnan(steps.global[i])) continue;
-    const auto most_w = static_cast<float>(extraterrestrial_level_w_m2(series, i));
-    series.steps[i].beam_w = std::clamp(steps.global[i] - steps.sky[i], 0.0F, most_w);
-    series.steps[i].sky_w = steps.global[i] - series.steps[i].beam_w;
-  }
-}
-
 std::string describe(const Readings& readings, const SeriesSource& source, const LightSeries& series) {
-  std::string quantities;
-  const auto add = [&](std::size_t quantity, const char* name) {
-    if (readings.has(quantity)) quantities += (quantities.empty() ? "" : ", ") + std::string(name);
-  };
-  add(kGlobal, "global");
-  add(kDiffuse, "diffuse");
-  add(kBeam, "beam");
-  const int last = int{series.first_year} + series.years - 1;
-  const std::string years =
-      series.years == 1 ? fmt::format("{}", last) : fmt::format("{} to {}", int{series.first_year}, last);
   return fmt::format("record {} of {} ({}) every {} minutes, {}", source.file.filename().string(),
-                     is_quantum(source) ? "photons" : "radiation", quantities, readings.step.count() / 60,
-                     years);
+                     is_quantum(source.unit) ? "photons" : "radiation", quantities_text(readings),
+                     readings.step.count() / 60, years_text(series));
 }
 
 void split_and_note(StepLight& steps, const Readings& readings, const SeriesSource& source,
@@ -117,23 +79,12 @@ void split_and_note(StepLight& steps, const Readings& readings, const SeriesSour
                                          : "Ridley, Boland and Lauret (2010)"));
 }
 
-void fill_and_note(StepLight& steps, const SeriesSource& source, LightSeries& series) {
-  const std::vector<MonthGaps> months = count_gaps(steps, series);
-  check_gaps(months, source.allow_gaps, source.file.string());
-  const std::string text = gaps_text(months);
-  if (text.empty()) return;
-  if (!fill_gaps(steps, series)) {
-    throw Error(ErrorKind::data,
-                {.what = "gaps cannot be filled: no day within 15 days, in any year, has light "
-                         "at that time",
-                 .where = source.file.string(),
-                 .found = text,
-                 .remedy = "give a record of at least one whole year"});
-  }
-  series.notes.push_back(
-      "missing daylight was filled with the mean clearness of the same time on the days "
-      "around, or in other years: " +
-      text);
+void check_stamp(const SeriesSource& source, const std::string& where) {
+  if (!is_per_day(source.unit) || source.stamp == SeriesSource::Stamp::day) return;
+  throw Error(ErrorKind::plan, {.what = "a unit per day is for a daily record",
+                                .where = where,
+                                .found = unit_name(source.unit),
+                                .remedy = "give stamp = \"day\" if each line is a day's"});
 }
 
 }  // namespace
@@ -146,7 +97,7 @@ void check_columns(const SeriesSource& source, const std::string& where) {
                                   .found = "",
                                   .remedy = "name the column global, or both diffuse and beam"});
   }
-  if (is_quantum(source) && (source.global.empty() || !source.beam.empty())) {
+  if (is_quantum(source.unit) && (source.global.empty() || !source.beam.empty())) {
     throw Error(ErrorKind::plan, {.what = "photons are taken as global, with or without diffuse",
                                   .where = where,
                                   .found = source.global.empty() ? "no global" : "beam",
@@ -156,6 +107,8 @@ void check_columns(const SeriesSource& source, const std::string& where) {
 
 LightSeries make_series(const SeriesSource& source, const LightRequest& request) {
   check_columns(source, request.where);
+  check_stamp(source, request.where);
+  if (source.stamp == SeriesSource::Stamp::day) return make_daily_series(source, request);
   return series_of(read_readings(source, request.clock), source, request);
 }
 
@@ -163,7 +116,7 @@ LightSeries series_of(Readings readings, const SeriesSource& source, const Light
   LightSeries series = open_years(readings, request);
   const std::vector<IntervalSun> suns = suns_of(readings, series);
   const double flux = flux_per_unit(source.unit, readings.step);
-  const double watts = is_quantum(source) ? kRough_w_umol : flux;
+  const double watts = rough_w_per_unit(source.unit, readings.step);
   // The clock first: it is told by the hours alone, while a wrong one makes any unit look wrong.
   const std::string clock_note =
       check_clock(clock_shifts_min(readings, suns, series), readings, source, series.utc_offset);
@@ -176,9 +129,9 @@ LightSeries series_of(Readings readings, const SeriesSource& source, const Light
     if (!note.empty()) series.notes.push_back(note);
   }
   StepLight steps = steps_of(readings, suns, series, flux);
-  if (is_quantum(source)) photons_to_watts(steps, series);
+  if (is_quantum(source.unit)) photons_to_watts(steps, series);
   split_and_note(steps, readings, source, series);
-  fill_and_note(steps, source, series);
+  fill_and_note(steps, source.allow_gaps, source.file.string(), series);
   write_steps(steps, series);
   series.description = describe(readings, source, series);
   add_photons(series);

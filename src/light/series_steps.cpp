@@ -1,8 +1,8 @@
 #include "light/series_steps.h"
 
+#include <algorithm>
 #include <cmath>
 #include <limits>
-#include <optional>
 
 #include "light/open_series.h"
 
@@ -11,13 +11,8 @@ namespace {
 
 constexpr float kUnknown = std::numeric_limits<float>::quiet_NaN();
 
-struct IntervalLight {
-  double global = 0.0;
-  std::optional<double> sky;
-};
+}  // namespace
 
-// An interval's light from what was measured. The sum of the parts is better than a pyranometer's global
-// (less error of its cosine); where beam and global are given, the rest is sky.
 std::optional<IntervalLight> light_of_interval(const Readings& readings, std::size_t i,
                                                const IntervalSun& sun, double flux) {
   const auto value = [&](std::size_t quantity) -> std::optional<double> {
@@ -41,6 +36,8 @@ std::optional<IntervalLight> light_of_interval(const Readings& readings, std::si
   }
   return light;
 }
+
+namespace {
 
 // Sums over a step while intervals come in.
 struct StepSums {
@@ -79,6 +76,15 @@ StepLight steps_of(const Readings& readings, const std::vector<IntervalSun>& sun
       steps.sky[i] = std::min(sums[i].sky / sums[i].seconds, steps.global[i]);
   }
   return steps;
+}
+
+void write_steps(const StepLight& steps, LightSeries& series) {
+  for (std::size_t i = 0; i < steps.global.size(); ++i) {
+    if (std::isnan(steps.global[i])) continue;
+    const auto most_w = static_cast<float>(extraterrestrial_level_w_m2(series, i));
+    series.steps[i].beam_w = std::clamp(steps.global[i] - steps.sky[i], 0.0F, most_w);
+    series.steps[i].sky_w = steps.global[i] - series.steps[i].beam_w;
+  }
 }
 
 }  // namespace sunfall

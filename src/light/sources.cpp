@@ -5,6 +5,8 @@
 #include "light/grid.h"
 #include "light/monthly.h"
 #include "light/series.h"
+#include "light/sunshine.h"
+#include "light/temperature.h"
 
 #include <variant>
 

@@ -96,4 +96,13 @@ std::optional<TimeStamp> parse_time_stamp(std::string_view text) {
   return stamp;
 }
 
+std::optional<std::chrono::sys_days> parse_date(std::string_view text) {
+  Cursor cursor(text);
+  const std::chrono::sys_days day = read_day(cursor);
+  if (cursor.good() && cursor.at_end()) return day;
+  const auto stamp = parse_time_stamp(text);
+  if (!stamp || stamp->has_offset || stamp->time != day) return std::nullopt;
+  return day;
+}
+
 }  // namespace sunfall

@@ -18,4 +18,8 @@ struct TimeStamp {
 // other form (other orders of day and month are ambiguous) and for days and times that no calendar has.
 std::optional<TimeStamp> parse_time_stamp(std::string_view text);
 
+// "2025-06-01" or "20250601", and the same with a midnight behind it, "2025-06-01T00:00:00", as programs
+// write dates. Nothing for other times of the day and for stamps with an offset.
+std::optional<std::chrono::sys_days> parse_date(std::string_view text);
+
 }  // namespace sunfall
