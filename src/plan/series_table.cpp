@@ -1,5 +1,7 @@
 #include "plan/series_table.h"
 
+#include "light/flux_unit.h"
+
 namespace sunfall {
 namespace {
 
@@ -10,7 +12,10 @@ using Split = SeriesSource::Split;
 const PathKey kFile{"file", ""};
 const TextKey kTime{"time", "time", ""};
 const ChoiceKey<Stamp> kStamp{
-    "stamp", {{"begin", Stamp::begin}, {"middle", Stamp::middle}, {"end", Stamp::end}}, Stamp::end, true};
+    "stamp",
+    {{"begin", Stamp::begin}, {"middle", Stamp::middle}, {"end", Stamp::end}, {"day", Stamp::day}},
+    Stamp::end,
+    true};
 const TextKey kGlobal{"global", std::nullopt, "none (no such column)"};
 const TextKey kDiffuse{"diffuse", std::nullopt, "none (no such column)"};
 const TextKey kBeam{"beam", std::nullopt, "none (no such column)"};
@@ -23,7 +28,11 @@ const ChoiceKey<Unit> kUnit{"unit",
                              {"Wh m-2", Unit::wh_m2},
                              {"kWh m-2", Unit::kwh_m2},
                              {"µmol m-2 s-1", Unit::umol_m2_s},
-                             {"umol m-2 s-1", Unit::umol_m2_s}},
+                             {"umol m-2 s-1", Unit::umol_m2_s},
+                             {"J cm-2 d-1", Unit::j_cm2_d},
+                             {"MJ m-2 d-1", Unit::mj_m2_d},
+                             {"kWh m-2 d-1", Unit::kwh_m2_d},
+                             {"mol m-2 d-1", Unit::mol_m2_d}},
                             Unit::w_m2,
                             true};
 const ChoiceKey<char> kDelimiter{"delimiter", {{"auto", '\0'}, {",", ','}, {";", ';'}, {"tab", '\t'}}, '\0'};
@@ -41,17 +50,37 @@ void check_columns(const TableReader& table, const SeriesSource& source) {
     table.refuse("", "no column of global radiation is named", "",
                  "Add global = \"<the column's name>\", or both diffuse and beam");
   }
-  if (source.unit == Unit::umol_m2_s && source.global.empty()) {
+  const bool photons = is_quantum(source.unit);
+  if (photons && source.global.empty()) {
     table.refuse(kUnit.name, "photons are taken as global, with or without diffuse", "no global",
                  "Name the column of the level quantum sensor as global");
   }
-  if (source.unit == Unit::umol_m2_s && !source.beam.empty()) {
+  if (photons && !source.beam.empty()) {
     table.refuse(kBeam.name, "photons are taken as global, with or without diffuse", "beam", "Remove it");
   }
   const auto same = [](const std::string& a, const std::string& b) { return !a.empty() && a == b; };
   if (same(source.global, source.diffuse) || same(source.global, source.beam) ||
       same(source.diffuse, source.beam)) {
     table.refuse("", "one column is named twice", "", "Name each quantity's own column");
+  }
+}
+
+// A day is known by its date: it has no clock, and its split is that of days.
+void check_days(const TableReader& table, const SeriesSource& source) {
+  if (source.stamp != Stamp::day) {
+    if (!is_per_day(source.unit)) return;
+    table.refuse(kUnit.name, "a unit per day is for a daily record", in_quotes(kUnit.name_of(source.unit)),
+                 "Give stamp = \"day\" if each line is a day's");
+  }
+  if (table.has(kSplit.name)) {
+    table.refuse(kSplit.name, "this split is for hours", "stamp = \"day\"",
+                 "Remove it; [light] day_split is for days");
+  }
+  for (const std::string& name : {kUtc.name, kTrustClock.name}) {
+    if (table.has(name)) {
+      table.refuse(name, "a daily record has no clock: its days are dates of the place's standard time",
+                   "stamp = \"day\"", "Remove it");
+    }
   }
 }
 
@@ -74,10 +103,13 @@ SeriesSource read_series_table(TableReader& table) {
   source.unit = table.choice(kUnit);
   source.delimiter = table.choice(kDelimiter);
   source.decimal = table.choice(kDecimal);
-  source.utc = table.flag(kUtc);
-  source.split = table.choice(kSplit);
   source.allow_gaps = table.flag(kAllowGaps);
-  source.trust_clock = table.flag(kTrustClock);
+  check_days(table, source);
+  if (source.stamp != Stamp::day) {
+    source.utc = table.flag(kUtc);
+    source.split = table.choice(kSplit);
+    source.trust_clock = table.flag(kTrustClock);
+  }
   check_columns(table, source);
   table.finish();
   return source;

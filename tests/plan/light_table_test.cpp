@@ -12,7 +12,8 @@ using ::testing::Each;
 using ::testing::ElementsAre;
 
 const std::string kOneSource =
-    "Give one of monthly_global = [twelve numbers], series = { file = … }, grid = { file = … } and clear = true";
+    "Give one of monthly_global = [twelve numbers], series = { file = … }, grid = { file = … }, sunshine = { "
+    "file = … }, temperature = { file = … } and clear = true";
 const std::string kUnits =
     "Write the mean day's sum on a level plane: kWh m-2 d-1 times 3.6, mean W m-2 times 0.0864";
 const std::string kAt = "farm.toml:5 light.monthly_global";
@@ -95,6 +96,38 @@ TEST(LightTable, TakesASeriesAlone) {
                       "turbidity is for a cloudless sky only", "", "Remove it");
   folder.expect_fault(plan_with_light("series = 'station.csv'"), "farm.toml:5 light.series",
                       "must be a table, { key = value, … }", "a string: \"station.csv\"", "");
+}
+
+TEST(LightTable, TakesDaysThatVary) {
+  const PlanFolder folder;
+  const auto source = [&](const std::string& keys) {
+    return std::get<MonthlyGlobalSource>(folder.read(months_to("2") + keys).light);
+  };
+  const MonthlyGlobalSource mean = source("");
+  EXPECT_EQ(mean.days, MonthlyGlobalSource::Days::mean);
+  EXPECT_EQ(mean.split, DaySplit::erbs);
+  EXPECT_EQ(mean.years, 1);
+  const MonthlyGlobalSource varied =
+      source("days = 'varied'\nyears = 12\nseed = 40\npersistence = 0\nday_split = 'collares-pereira'\n");
+  EXPECT_EQ(varied.days, MonthlyGlobalSource::Days::varied);
+  EXPECT_EQ(varied.years, 12);
+  EXPECT_EQ(varied.seed, 40);
+  EXPECT_EQ(varied.persistence, 0.0);
+  EXPECT_EQ(varied.split, DaySplit::collares_pereira);
+
+  const std::string at = "farm.toml:6 light.";
+  for (const std::string key : {"years", "seed", "persistence"}) {
+    const std::string value = key == "persistence" ? " = 0.1\n" : " = 3\n";
+    folder.expect_fault(months_to("2") + key + value, at + key, "is for days that vary only", "",
+                        "Remove it, or give days = \"varied\"");
+    folder.expect_fault(plan_with(key + value), at + key, "is for monthly_global only", "", "Remove it");
+  }
+  folder.expect_fault(plan_with("days = 'varied'\n"), at + "days", "is for monthly_global only", "",
+                      "Remove it");
+  folder.expect_fault(plan_with("day_split = 'erbs'\n"), at + "day_split", "a cloudless sky is not split", "",
+                      "Remove it");
+  EXPECT_EQ(folder.fault(months_to("2") + "days = 'varied'\nyears = 101\n").what,
+            "must lie between 1 and 100");
 }
 
 TEST(LightTable, TakesOneTurbidityOrTwelve) {

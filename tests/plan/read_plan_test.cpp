@@ -26,6 +26,8 @@ clock = "+05:45"
 [light]
 monthly_global = [2, 4.1, 8.0, 13.2, 17.0, 18.1, 17.4, 14.9, 10.3, 5.9, 2.9, 1.8]
 year = 2024
+days = "mean"
+day_split = "collares-pereira"
 [periods]
 zenith = { from = "06-01", to = "07-31" }
 autumn = { from = "09-01", to = "11-30" }
@@ -54,6 +56,7 @@ TEST(ReadPlan, CarriesEveryValue) {
   EXPECT_EQ(plan.site.receiver_plane, ReceiverPlane::ground);
   EXPECT_EQ(plan.site.clock.name(), "+05:45");
   const auto& light = std::get<MonthlyGlobalSource>(plan.light);
+  EXPECT_EQ(light.split, DaySplit::collares_pereira);
   EXPECT_THAT(light.global_mj_m2_d,
               ElementsAre(2, 4.1, 8.0, 13.2, 17.0, 18.1, 17.4, 14.9, 10.3, 5.9, 2.9, 1.8));
   EXPECT_EQ(plan.light_where, folder.plan_file().string() + ":12 light.monthly_global");

@@ -56,10 +56,44 @@ TEST(SeriesTable, KnowsEveryUnit) {
                                    {"Wh m-2", Unit::wh_m2},
                                    {"kWh m-2", Unit::kwh_m2},
                                    {"µmol m-2 s-1", Unit::umol_m2_s},
-                                   {"umol m-2 s-1", Unit::umol_m2_s}}) {
+                                   {"umol m-2 s-1", Unit::umol_m2_s},
+                                   {"MJ m-2", Unit::mj_m2}}) {
     EXPECT_EQ(series_of("stamp = 'end'\nglobal = 'g'\nunit = '" + std::string(name) + "'\n").unit, unit)
         << name;
   }
+}
+
+TEST(SeriesTable, TakesDays) {
+  for (const auto& [name, unit] : {std::pair{"MJ m-2", Unit::mj_m2},
+                                   {"W m-2", Unit::w_m2},
+                                   {"J cm-2 d-1", Unit::j_cm2_d},
+                                   {"MJ m-2 d-1", Unit::mj_m2_d},
+                                   {"kWh m-2 d-1", Unit::kwh_m2_d},
+                                   {"mol m-2 d-1", Unit::mol_m2_d}}) {
+    const SeriesSource source =
+        series_of("stamp = 'day'\nglobal = 'g'\nunit = '" + std::string(name) + "'\n");
+    EXPECT_EQ(source.unit, unit) << name;
+    EXPECT_EQ(source.stamp, SeriesSource::Stamp::day);
+    EXPECT_EQ(source.day_split, DaySplit::erbs);
+  }
+  const PlanFolder folder;
+  const std::string day = "stamp = 'day'\nglobal = 'g'\nunit = 'MJ m-2 d-1'\n";
+  for (const std::string key : {"utc = true", "trust_clock = true"}) {
+    EXPECT_EQ(folder.fault(plan_with_series(day + key + "\n")).what,
+              "a daily record has no clock: its days are dates of the place's standard time");
+  }
+  folder.expect_fault(plan_with_series(day + "split = 'erbs'\n"), "farm.toml:9 light.series.split",
+                      "this split is for hours", "stamp = \"day\"",
+                      "Remove it; [light] day_split is for days");
+  folder.expect_fault(plan_with_series("stamp = 'end'\nglobal = 'g'\nunit = 'MJ m-2 d-1'\n"),
+                      "farm.toml:8 light.series.unit", "a unit per day is for a daily record",
+                      "\"MJ m-2 d-1\"", "Give stamp = \"day\" if each line is a day's");
+  std::string plan = plan_with_series(day);
+  plan.insert(plan.find("[light.series]"), "[light]\nday_split = 'collares-pereira'\n");
+  EXPECT_EQ(std::get<SeriesSource>(folder.read(plan).light).day_split, DaySplit::collares_pereira);
+  plan = plan_with_series(kUsual + "global = 'g'\n");
+  plan.insert(plan.find("[light.series]"), "[light]\nday_split = 'erbs'\n");
+  EXPECT_EQ(folder.fault(plan).what, "is for days and months, and the series has shorter steps");
 }
 
 TEST(SeriesTable, WantsStampAndUnitToBeSaid) {
