@@ -161,8 +161,8 @@ void describe(const MonthlyGlobalSource& source, LightSeries& series) {
   series.notes.push_back(fmt::format(
       "the days are made, not measured: each month's follow the distribution of Bendt, Collares-Pereira and "
       "Rabl (1981) for its mean clearness, a day is like the one before by {:g}, seed {}; every month of "
-      "every "
-      "year keeps the given mean, so that months and years differ less than real ones. Beam and sky of each "
+      "every year keeps the given mean, so that the years do not stand for good and bad ones, and "
+      "percentiles over them say nothing. Beam and sky of each "
       "day by {}",
       source.persistence, source.seed, name_of(source.split)));
 }
