@@ -70,7 +70,7 @@ TEST(ReadPlan, CarriesEveryValue) {
   EXPECT_EQ(plan.dome.sky, SkyModel::overcast);
   EXPECT_TRUE(plan.output.shares);
   EXPECT_TRUE(plan.output.percentiles);
-  EXPECT_EQ(plan.output.percentiles_where, folder.plan_file().string() + ":27 output.percentiles");
+  EXPECT_EQ(plan.output.percentiles_where, folder.plan_file().string() + ":29 output.percentiles");
   EXPECT_THAT(plan.defaults, ElementsAre("periods.months = true"));
 }
 
