@@ -2,8 +2,11 @@
 // Adds up what the horizons of several lines take from every cell of a tile. All columns of a cell
 // stay in registers while the lines pass.
 
+#include <cstddef>
 #include <cstdint>
+#include <functional>
 #include <span>
+#include <vector>
 
 namespace sunfall {
 
@@ -12,14 +15,17 @@ inline constexpr int kMostLooks = 16;
 // Horizon steps of a tile for up to kMostLooks looks; `by_columns` says that cells are stored column by
 // column.
 struct HorizonBatch {
-  std::span<const std::uint16_t* const> steps;  // per look, one step per cell
+  std::size_t first_look = 0;
+  std::vector<const std::uint16_t*> steps;  // per look, one step per cell
   int rows = 0;
   int columns = 0;
   bool by_columns = false;
 };
 
-// sums[cell][32] += table[line][step of the cell][32] over the lines; cells row by row.
-void accumulate_level(const HorizonBatch& batch, std::span<const std::uint16_t* const> tables,
+// sums[cell][32] += table(look)[step of the cell][32] over the looks of all batches; cells row by row.
+// `table` gives a look's table.
+void accumulate_level(std::span<const HorizonBatch> batches,
+                      const std::function<const std::uint16_t*(std::size_t look)>& table,
                       std::uint32_t* sums);
 
 // For receivers in the plane of the ground. With a cell's ground rising by `rise` per metre towards

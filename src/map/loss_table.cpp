@@ -100,7 +100,7 @@ LossTable::LossTable(const DomeLight& light, const std::vector<Look>& looks) : l
       below.push_back(below_horizon(light, *columns[c].part, Plane::level, look, columns[c].period));
       most = std::max(most, below.back().back() / columns[c].open);
     }
-    const double scale = 65535.0 / most;
+    const double scale = (65535 / kLooksPerWord) / most;
     units_[c] = 1.0 / scale;
     for (std::size_t look = 0; look < looks_; ++look) {
       std::uint16_t* out =

@@ -24,9 +24,11 @@ std::vector<Look> looks_of(const DomeLight& light);
 
 // Columns: the beam share of every period, then the sky share of every period, padded with zeros.
 inline constexpr int kColumnBlock = 32;
+// So many entries of one column add up within 16 bits.
+inline constexpr int kLooksPerWord = 4;
 
 // For level receivers. Entries are integers in a unit of each column's own, so that sums are exact
-// and in any order the same. Rounding an entry errs by at most 1/131070 of the strongest look.
+// and in any order the same. Rounding an entry errs by at most 1/32766 of the strongest look.
 class LossTable {
  public:
   LossTable(const DomeLight& light, const std::vector<Look>& looks);

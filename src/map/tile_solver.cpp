@@ -9,9 +9,11 @@
 namespace sunfall {
 namespace {
 
-// Lines whose horizons are kept at a time: their tables should stay in the second cache.
-constexpr int kBatch = 12;
+// Looks that are added up together: their tables should stay in the second cache.
+constexpr int kBatch = 8;
 static_assert(kBatch <= kMostLooks);
+// Looks whose horizons are kept at a time: the sums, larger than any cache, pass once for all of them.
+constexpr int kKept = 6 * kBatch;
 
 // The near rows are looked along once for looks that lie within this of it and share its heading.
 constexpr double kNearTolerance_deg = 2.0;
@@ -46,13 +48,13 @@ template <typename Take>
 void TileSolver::batches(HorizonSweep& sweep, const CellWindow& window, Angle convergence, TileRoom& room,
                          Take take) const {
   const std::size_t cells = static_cast<std::size_t>(window.columns) * window.rows;
-  room.steps.resize(cells * kBatch);
-  std::vector<const std::uint16_t*> steps;
-  std::size_t first = 0;
-  bool columns_now = false;
+  room.steps.resize(cells * kKept);
+  std::vector<HorizonBatch> kept;
+  std::size_t looks_kept = 0;
   const auto flush = [&] {
-    if (!steps.empty()) take(first, HorizonBatch{steps, window.rows, window.columns, columns_now});
-    steps.clear();
+    if (!kept.empty()) take(kept);
+    kept.clear();
+    looks_kept = 0;
   };
   std::optional<GridAzimuth> near_azimuth;
   for (std::size_t look = 0; look < looks_.size(); ++look) {
@@ -65,14 +67,13 @@ void TileSolver::batches(HorizonSweep& sweep, const CellWindow& window, Angle co
       near_azimuth = near_azimuth_for(look, convergence);
       sweep.look_near(*near_azimuth);
     }
-    if (steps.size() == kBatch || (!steps.empty() && columns_now != by_columns(heading))) flush();
-    if (steps.empty()) {
-      first = look;
-      columns_now = by_columns(heading);
+    if (looks_kept == kKept) flush();
+    if (kept.empty() || kept.back().steps.size() == kBatch || kept.back().by_columns != by_columns(heading)) {
+      kept.push_back({look, {}, window.rows, window.columns, by_columns(heading)});
     }
-    std::uint16_t* place = room.steps.data() + cells * steps.size();
+    std::uint16_t* place = room.steps.data() + cells * looks_kept++;
     sweep.look_far(azimuth, place);
-    steps.push_back(place);
+    kept.back().steps.push_back(place);
   }
   flush();
 }
@@ -83,11 +84,10 @@ void TileSolver::solve_level(HorizonSweep& sweep, Angle convergence, TileRoom& r
   std::vector<AlignedVector<std::uint32_t>>& sums = room.level_sums;
   sums.resize(blocks);
   for (auto& sum : sums) sum.assign(cells * kColumnBlock, 0);
-  batches(sweep, out.window, convergence, room, [&](std::size_t first, const HorizonBatch& batch) {
-    std::vector<const std::uint16_t*> tables(batch.steps.size());
+  batches(sweep, out.window, convergence, room, [&](std::span<const HorizonBatch> kept) {
     for (int block = 0; block < blocks; ++block) {
-      for (std::size_t i = 0; i < tables.size(); ++i) tables[i] = level_.look(first + i, block);
-      accumulate_level(batch, tables, sums[block].data());
+      accumulate_level(
+          kept, [&](std::size_t look) { return level_.look(look, block); }, sums[block].data());
     }
   });
   std::vector<float> units(level_.units().begin(), level_.units().end());
@@ -137,16 +137,19 @@ void TileSolver::solve_slope(HorizonSweep& sweep, Angle convergence, TileRoom& r
   }
   std::vector<float>& sums = room.slope_sums;
   sums.assign(cells * width, 0.0F);
-  batches(sweep, window, convergence, room, [&](std::size_t first, const HorizonBatch& batch) {
-    std::vector<const float*> tables(batch.steps.size());
-    for (std::size_t i = 0; i < tables.size(); ++i) tables[i] = slope_->look(first + i);
-    SlopeTables slope{tables,
-                      width,
-                      east.data(),
-                      north.data(),
-                      std::span(towards_east).subspan(first, tables.size()),
-                      std::span(towards_north).subspan(first, tables.size())};
-    accumulate_slope(batch, slope, sums.data());
+  batches(sweep, window, convergence, room, [&](std::span<const HorizonBatch> kept) {
+    for (const HorizonBatch& batch : kept) {
+      const std::size_t first = batch.first_look;
+      std::vector<const float*> tables(batch.steps.size());
+      for (std::size_t i = 0; i < tables.size(); ++i) tables[i] = slope_->look(first + i);
+      SlopeTables slope{tables,
+                        width,
+                        east.data(),
+                        north.data(),
+                        std::span(towards_east).subspan(first, tables.size()),
+                        std::span(towards_north).subspan(first, tables.size())};
+      accumulate_slope(batch, slope, sums.data());
+    }
   });
   for (std::size_t cell = 0; cell < cells; ++cell) {
     const double upright =

@@ -48,7 +48,7 @@ class TileSolver {
   void solve_level(HorizonSweep& sweep, Angle convergence, TileRoom& room, TileShares& out) const;
   void solve_slope(HorizonSweep& sweep, Angle convergence, TileRoom& room, TileShares& out) const;
   GridAzimuth near_azimuth_for(std::size_t look, Angle convergence) const;
-  // Calls take(first look, batch) with the horizons of several looks at a time.
+  // Calls take(batches) with the horizons of several looks at a time.
   template <typename Take>
   void batches(HorizonSweep& sweep, const CellWindow& window, Angle convergence, TileRoom& room,
                Take take) const;
