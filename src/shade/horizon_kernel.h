@@ -2,8 +2,8 @@
 // The inner loop of the far-horizon sweep.
 //
 // For one direction of light, parallel lines cross a tile away from the light. `u` counts rows
-// along the march (the light comes from small u), `v` columns across it; line l passes v = l + lean·u.
-// Each line keeps the upper hull of the ground it has passed as a chain of parent links: the parent
+// along the march (the light comes from small u), `v` columns across it; line l passes v = first_v + l +
+// lean·u. Each line keeps the upper hull of the ground it has passed as a chain of parent links: the parent
 // of a point is the point that makes its horizon. From a receiver the horizon is found by walking
 // the chain while the slope still rises (Dozier and Frew 1990; Timonen and Westerholm 2010, O(1)
 // amortised). Rows are taken in groups, of which each line keeps one, at its own distance: the one
@@ -49,7 +49,7 @@ struct SweepJob {
   int tile_row =
       0;  // index of the row with u = 0, a multiple of kRowsPerNode; the rows after it are u = 1, 2, …
   float lean = 0.0F;
-  int first_line = 0;
+  float first_v = 0.0F;
   int blocks = 0;
   const float* receivers = nullptr;  // heights at u = 0, v = 0 …; kReceiverMargin cells of margin all round
   int receiver_stride = 0;

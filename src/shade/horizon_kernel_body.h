@@ -70,7 +70,7 @@ inline void walk_all(Walk (&walks)[kParts], const SweepScratch& scratch) {
 class BlockSweep {
  public:
   BlockSweep(const SweepJob& job, int block)
-      : job_(job), block_(block), first_line_(job.first_line + block * kLinesPerBlock) {
+      : job_(job), block_(block), first_v_(job.first_v + static_cast<float>(block * kLinesPerBlock)) {
     for (int part = 0; part < kParts; ++part) {
       height_[part] = parent_height_[part] = Lanes::set(kNothing);
       code_[part] = parent_code_[part] = Lanes::set(packed(-1.0e6F, 0));
@@ -92,7 +92,7 @@ class BlockSweep {
   // Whether any line of the block is over the tile, with a cell to spare, at rows near u.
   bool in_tile(int u) const {
     const float slack = 2.0F + kNodeStride;
-    const float v = static_cast<float>(first_line_) + job_.lean * static_cast<float>(u);
+    const float v = first_v_ + job_.lean * static_cast<float>(u);
     return v + kLinesPerBlock >= -slack && v <= static_cast<float>(job_.tile_columns) + slack;
   }
 
@@ -104,7 +104,7 @@ class BlockSweep {
 
   // The row's heights under the block's lines.
   void sample(const MarchRow& row, Float (&z)[kParts]) const {
-    const float v = static_cast<float>(first_line_) + job_.lean * row.u - row.first_v;
+    const float v = first_v_ + job_.lean * row.u - row.first_v;
     if (row.cell == 1.0F) {
       const float whole = __builtin_floorf(v);
       const int index = static_cast<int>(whole);
@@ -213,7 +213,7 @@ class BlockSweep {
 
   // Receiver heights at the lines' own places on row u; lines beyond the margin use its edge.
   Float receiver_height(int u, int part) const {
-    const float v = static_cast<float>(first_line_) + job_.lean * static_cast<float>(u);
+    const float v = first_v_ + job_.lean * static_cast<float>(u);
     const float whole = __builtin_floorf(v);
     const Float fraction = Lanes::set(v - whole);
     const int row = u < job_.tile_rows + kReceiverMargin - 1 ? u : job_.tile_rows + kReceiverMargin - 1;
@@ -236,7 +236,7 @@ class BlockSweep {
 
   const SweepJob& job_;
   int block_;
-  int first_line_;
+  float first_v_;
   // The newest node of the hull.
   Float height_[kParts];
   Int code_[kParts];

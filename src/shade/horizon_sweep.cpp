@@ -66,7 +66,13 @@ HorizonSweep::March& HorizonSweep::march(Heading heading) {
   if (m.ready) return m;
   m.columns = by_columns(heading);
   m.reversed = heading == Heading::south || heading == Heading::east;
-  m.rows = m.columns ? tile_.window.columns : tile_.window.rows;
+  const int tile_u = m.columns ? tile_.window.column : tile_.window.row;
+  const int tile_rows = m.columns ? tile_.window.columns : tile_.window.rows;
+  const int map_rows = m.columns ? tile_.map_columns : tile_.map_rows;
+  const int first = m.reversed ? map_rows - tile_u - tile_rows : tile_u;
+  m.lead = ((first % kNodeStride) + kNodeStride) % kNodeStride;
+  m.rows = m.lead + tile_rows;
+  m.map_u = first - m.lead;
   m.width = m.columns ? tile_.window.rows : tile_.window.columns;
   for (int level = static_cast<int>(tile_.levels.size()) - 1; level >= 0; --level) add_level_rows(m, level);
   align_rows(m);
@@ -98,7 +104,7 @@ void HorizonSweep::add_level_rows(March& m, int level) {
     const int line = m.reversed ? lines - 1 - i : i;
     const float place = centre(first_line + line, tile_u);
     MarchRow row;
-    row.u = m.reversed ? static_cast<float>(m.rows - 1) - place : place;
+    row.u = m.reversed ? static_cast<float>(m.rows - 1) - place : place + static_cast<float>(m.lead);
     const bool beyond_coarser = m.march_rows.empty() ? row.u >= outer : row.u - 0.5F * size >= m.covered_to;
     if (!beyond_coarser || row.u >= inner) continue;
     row.values = grid.heights.data() + static_cast<std::size_t>(line) * count;
@@ -129,8 +135,10 @@ void HorizonSweep::turn_receivers(March& m) {
   m.receiver_stride = m.width + 2 * margin;
   // Room for a whole group of cells behind the last row.
   m.receivers.resize(static_cast<std::size_t>(m.rows + 2 * margin) * m.receiver_stride + kRowGroup);
+  const int tile_rows = m.rows - m.lead;
   for (int u = -margin; u < m.rows + margin; ++u) {
-    const int place = (m.reversed ? m.rows - 1 - u : u) + margin;
+    const int row_of_tile = std::max(u - m.lead, -margin);
+    const int place = (m.reversed ? tile_rows - 1 - row_of_tile : row_of_tile) + margin;
     for (int v = -margin; v < m.width + margin; ++v) {
       const int row = m.columns ? v + margin : place, column = m.columns ? place : v + margin;
       m.receivers[static_cast<std::size_t>(u + margin) * m.receiver_stride + v + margin] =
@@ -176,7 +184,7 @@ void HorizonSweep::look_near(GridAzimuth azimuth) {
   near_stride_ = (m.width + kRowGroup - 1) / kRowGroup * kRowGroup;
   near_.resize(static_cast<std::size_t>(m.rows) * near_stride_);
   std::vector<NearRow> rows;
-  for (int u = 0; u < m.rows; ++u) {
+  for (int u = m.lead; u < m.rows; ++u) {
     rows.clear();
     append_near_rows(m, direction, u, 1, kSharedRows, rows);
     append_half_rows(m, direction, u, rows);
@@ -191,7 +199,7 @@ double HorizonSweep::bend_of(const Direction& direction) const {
   return row_m * row_m * (1.0 - options_.refraction) / (2.0 * options_.earth_radius_m);
 }
 
-void HorizonSweep::sweep_far(const March& m, const Direction& direction, int first_line, int blocks) {
+void HorizonSweep::sweep_far(const March& m, const Direction& direction, float first_v, int blocks) {
   const double step_m = options_.cell_m * direction.row_length;
   const double bend = bend_of(direction);
   std::vector<MarchRow> rows = m.march_rows;
@@ -210,7 +218,7 @@ void HorizonSweep::sweep_far(const March& m, const Direction& direction, int fir
   job.row_count = static_cast<int>(rows.size());
   job.tile_row = m.tile_row;
   job.lean = direction.lean;
-  job.first_line = first_line;
+  job.first_v = first_v;
   job.blocks = blocks;
   job.receivers =
       m.receivers.data() + static_cast<std::size_t>(kReceiverMargin) * m.receiver_stride + kReceiverMargin;
@@ -230,15 +238,17 @@ void HorizonSweep::look_far(GridAzimuth azimuth, std::uint16_t* steps) {
   const Direction direction = direction_of(azimuth);
   const March& m = march(direction.heading);
   const float last_u = static_cast<float>((node_rows(m.rows) - 1) * kNodeStride);
-  const int first_line = static_cast<int>(std::floor(std::min(0.0F, -direction.lean * last_u))) - 1;
-  const int last_line =
-      static_cast<int>(std::ceil(static_cast<float>(m.width) + std::max(0.0F, -direction.lean * last_u))) + 1;
-  const int blocks = (last_line - first_line + 1 + kLinesPerBlock) / kLinesPerBlock;
-  sweep_far(m, direction, first_line, blocks);
+  // Lines pass whole columns at the edge of the map that the light comes over.
+  const double at_map = double(direction.lean) * m.map_u;
+  const float phase = static_cast<float>(at_map - std::floor(at_map));
+  const float first_v = std::floor(std::min(0.0F, -direction.lean * last_u)) - 2.0F + phase;
+  const float last_v = static_cast<float>(m.width) + std::max(0.0F, -direction.lean * last_u) + 1.0F;
+  const int blocks = static_cast<int>(std::ceil(last_v - first_v + 1.0F)) / kLinesPerBlock + 1;
+  sweep_far(m, direction, first_v, blocks);
   const double bend = bend_of(direction);
   std::vector<float> near(static_cast<std::size_t>(near_stride_));
   std::vector<NearRow> rows;
-  for (int u = 0; u < m.rows; ++u) {
+  for (int u = m.lead; u < m.rows; ++u) {
     rows.clear();
     append_near_rows(m, direction, u, kSharedRows + 1, kNearRows, rows);
     look_along_near_rows(
@@ -246,7 +256,7 @@ void HorizonSweep::look_far(GridAzimuth azimuth, std::uint16_t* steps) {
     FarRead read;
     const int node = u / kNodeStride;
     const int next = std::min(node + 1, node_rows(m.rows) - 1);
-    const float line = -direction.lean * static_cast<float>(u) - static_cast<float>(first_line);
+    const float line = -direction.lean * static_cast<float>(u) - first_v;
     const float whole = std::floor(line);
     const auto points = [&](int node_row) {
       const std::size_t at = static_cast<std::size_t>(node_row) * far_stride_ + static_cast<int>(whole);
@@ -262,7 +272,7 @@ void HorizonSweep::look_far(GridAzimuth azimuth, std::uint16_t* steps) {
     read.near = near.data();
     read.tangent_per_slope = static_cast<float>(1.0 / (options_.cell_m * direction.row_length));
     read.width = m.width;
-    const int row = m.reversed ? m.rows - 1 - u : u;
+    const int row = m.reversed ? m.rows - 1 - u : u - m.lead;
     read.steps = steps + static_cast<std::size_t>(row) * m.width;
     combine_near_and_far(read);
   }

@@ -42,12 +42,15 @@ class HorizonSweep {
   void look_far(GridAzimuth azimuth, std::uint16_t* steps);
 
  private:
-  // One heading's view of the tile: u runs away from the light.
+  // One heading's view of the tile: u runs away from the light. Node rows and lines lie where they would
+  // lie for any other tile of the map, so that tiles agree on what they see.
   struct March {
     bool ready = false;
     bool columns = false;   // u counts columns
     bool reversed = false;  // u runs towards the north-west
-    int rows = 0;           // tile extent along u
+    int lead = 0;           // rows from u = 0, which every tile has on the same rows of the map, to the tile
+    int rows = 0;           // from u = 0 to the tile's last row
+    int map_u = 0;          // rows from the map's edge on the light's side to u = 0
     int width = 0;          // tile extent along v
     std::vector<MarchRow> march_rows;
     float covered_to = 0.0F;  // u up to which march_rows reach while they are gathered
@@ -73,7 +76,7 @@ class HorizonSweep {
                                std::vector<NearRow>& out);
   static void append_half_rows(const March& m, const Direction& direction, int u, std::vector<NearRow>& out);
   double bend_of(const Direction& direction) const;
-  void sweep_far(const March& m, const Direction& direction, int first_line, int blocks);
+  void sweep_far(const March& m, const Direction& direction, float first_v, int blocks);
 
   const TerrainTile& tile_;
   SweepOptions options_;

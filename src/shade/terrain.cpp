@@ -156,6 +156,8 @@ Grid<float> Terrain::ground(const CellWindow& window) const {
 TerrainTile Terrain::tile(const CellWindow& window) const {
   TerrainTile out;
   out.window = window;
+  out.map_columns = frame_.columns;
+  out.map_rows = frame_.rows;
   const int size = std::max(window.columns, window.rows);
   for (int level = 0; level <= top_level_; ++level) {
     const int margin = size + (kFullReach << level) + (2 << level);

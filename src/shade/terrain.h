@@ -26,7 +26,8 @@ struct LevelGrid {
 
 // What a tile needs to see its horizon.
 struct TerrainTile {
-  CellWindow window;              // map cells of the tile
+  CellWindow window;  // map cells of the tile
+  int map_columns = 0, map_rows = 0;
   std::vector<LevelGrid> levels;  // level 0 first, each reaching farther
   CellWindow receiver_window;     // the tile with kReceiverMargin cells of margin
   std::vector<float> receivers;   // receiver heights over receiver_window, gaps filled in
@@ -84,6 +85,6 @@ class Terrain {
 };
 
 // Full resolution reaches this many cells around a tile; level n reaches 2^n times as far.
-inline constexpr int kFullReach = 64;
+inline constexpr int kFullReach = 128;
 
 }  // namespace sunfall
