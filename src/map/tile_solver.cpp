@@ -14,6 +14,8 @@ constexpr int kBatch = 8;
 static_assert(kBatch <= kMostLooks);
 // Looks whose horizons are kept at a time: the sums, larger than any cache, pass once for all of them.
 constexpr int kKept = 6 * kBatch;
+// Looks whose depths are kept at a time.
+constexpr std::size_t kCasterLooks = 4;
 
 // The near rows are looked along once for looks that lie within this of it and share its heading.
 constexpr double kNearTolerance_deg = 2.0;
@@ -25,9 +27,16 @@ double apart_deg(GridAzimuth a, GridAzimuth b) {
 
 }  // namespace
 
-TileSolver::TileSolver(const Terrain& terrain, const DomeLight& light, ReceiverPlane plane)
-    : terrain_(terrain), looks_(looks_of(light)), plane_(plane), level_(light, looks_) {
+const Casters& TileSolver::no_casters() {
+  static const Casters none;
+  return none;
+}
+
+TileSolver::TileSolver(const Terrain& terrain, const DomeLight& light, ReceiverPlane plane,
+                       const Casters& casters)
+    : terrain_(terrain), looks_(looks_of(light)), plane_(plane), level_(light, looks_), casters_(casters) {
   if (plane == ReceiverPlane::ground) slope_.emplace(light, looks_);
+  if (!casters.empty()) caster_tables_.emplace(light, looks_, level_, slope_ ? &*slope_ : nullptr, casters);
   sweep_options_.cell_m = terrain.frame().cell_m;
 }
 
@@ -78,7 +87,56 @@ void TileSolver::batches(HorizonSweep& sweep, const CellWindow& window, Angle co
   flush();
 }
 
-void TileSolver::solve_level(HorizonSweep& sweep, Angle convergence, TileRoom& room, TileShares& out) const {
+std::vector<TileSolver::CasterView> TileSolver::views_of(const TerrainTile& tile) const {
+  std::vector<CasterView> views;
+  for (std::size_t i = 0; i < casters_.size(); ++i) {
+    if (auto view = casters_[i]->tile(tile)) views.push_back({std::move(view), caster_tables_->group_of(i)});
+  }
+  return views;
+}
+
+template <typename Take>
+void TileSolver::caster_batches(const HorizonBatch& horizons, std::span<const CasterView> views,
+                                Angle convergence, TileRoom& room, Take take) const {
+  const std::size_t cells = static_cast<std::size_t>(horizons.rows) * horizons.columns;
+  const std::vector<CasterBand>& bands = caster_tables_->bands();
+  const int groups = caster_tables_->groups();
+  room.depths.resize(cells * bands.size() * groups * kCasterLooks);
+  CasterBatch batch{{}, horizons.rows, horizons.columns, horizons.by_columns};
+  std::size_t planes_used = 0;
+  const auto flush = [&] {
+    if (!batch.looks.empty()) take(batch);
+    batch.looks.clear();
+    planes_used = 0;
+  };
+  for (std::size_t i = 0; i < horizons.steps.size(); ++i) {
+    const std::size_t look = horizons.first_look + i;
+    const GridAzimuth azimuth = to_grid(looks_[look].azimuth, convergence);
+    float highest = 0.0F;
+    for (const CasterView& view : views) highest = std::max(highest, view.tile->highest_tangent(azimuth));
+    CasterLook of_look{horizons.steps[i], {}, look};
+    for (std::size_t b = 0; b < bands.size() && bands[b].tangent <= highest; ++b) {
+      Depth* const planes = room.depths.data() + planes_used * cells;
+      std::fill(planes, planes + cells * groups, Depth{0});
+      bool touched = false;
+      for (const CasterView& view : views) {
+        const std::span<Depth> plane(planes + cells * static_cast<std::size_t>(view.group), cells);
+        touched = view.tile->add_depth(azimuth, bands[b].tangent, plane) || touched;
+      }
+      if (!touched) continue;
+      DepthPlanes of_band{static_cast<int>(b), {}};
+      for (int g = 0; g < groups; ++g) of_band.groups.push_back(planes + cells * static_cast<std::size_t>(g));
+      of_look.bands.push_back(std::move(of_band));
+      planes_used += static_cast<std::size_t>(groups);
+    }
+    if (!of_look.bands.empty()) batch.looks.push_back(std::move(of_look));
+    if (batch.looks.size() == kCasterLooks) flush();
+  }
+  flush();
+}
+
+void TileSolver::solve_level(HorizonSweep& sweep, std::span<const CasterView> views, Angle convergence,
+                             TileRoom& room, TileShares& out) const {
   const std::size_t cells = out.usable.size();
   const int blocks = level_.blocks();
   std::vector<AlignedVector<std::uint32_t>>& sums = room.level_sums;
@@ -88,6 +146,14 @@ void TileSolver::solve_level(HorizonSweep& sweep, Angle convergence, TileRoom& r
     for (int block = 0; block < blocks; ++block) {
       accumulate_level(
           kept, [&](std::size_t look) { return level_.look(look, block); }, sums[block].data());
+    }
+    if (views.empty()) return;
+    for (const HorizonBatch& horizons : kept) {
+      caster_batches(horizons, views, convergence, room, [&](const CasterBatch& batch) {
+        for (int block = 0; block < blocks; ++block) {
+          accumulate_casters(batch, *caster_tables_, level_, block, sums[block].data());
+        }
+      });
     }
   });
   std::vector<float> units(level_.units().begin(), level_.units().end());
@@ -100,7 +166,8 @@ void TileSolver::solve_level(HorizonSweep& sweep, Angle convergence, TileRoom& r
   }
 }
 
-void TileSolver::solve_slope(HorizonSweep& sweep, Angle convergence, TileRoom& room, TileShares& out) const {
+void TileSolver::solve_slope(HorizonSweep& sweep, std::span<const CasterView> views, Angle convergence,
+                             TileRoom& room, TileShares& out) const {
   const CellWindow& window = out.window;
   const std::size_t cells = out.usable.size();
   const int width = slope_->padded();
@@ -149,6 +216,10 @@ void TileSolver::solve_slope(HorizonSweep& sweep, Angle convergence, TileRoom& r
                         std::span(towards_east).subspan(first, tables.size()),
                         std::span(towards_north).subspan(first, tables.size())};
       accumulate_slope(batch, slope, sums.data());
+      if (views.empty()) continue;
+      caster_batches(batch, views, convergence, room, [&](const CasterBatch& casters) {
+        accumulate_casters_on_slope(casters, *caster_tables_, slope, first, sums.data());
+      });
     }
   });
   for (std::size_t cell = 0; cell < cells; ++cell) {
@@ -170,10 +241,11 @@ TileShares TileSolver::solve(const TerrainTile& tile, Angle convergence, TileRoo
   out.usable = tile.usable;
   out.shares.resize(tile.usable.size() * out.columns);
   HorizonSweep sweep(tile, sweep_options_);
+  const std::vector<CasterView> views = views_of(tile);
   if (plane_ == ReceiverPlane::level)
-    solve_level(sweep, convergence, room, out);
+    solve_level(sweep, views, convergence, room, out);
   else
-    solve_slope(sweep, convergence, room, out);
+    solve_slope(sweep, views, convergence, room, out);
   return out;
 }
 

@@ -5,6 +5,8 @@
 #include <optional>
 #include <vector>
 
+#include "map/accumulate_casters.h"
+#include "map/caster_tables.h"
 #include "map/loss_table.h"
 #include "shade/horizon_sweep.h"
 #include "shade/terrain.h"
@@ -28,12 +30,16 @@ struct TileRoom {
   std::vector<std::uint16_t> steps;
   std::vector<AlignedVector<std::uint32_t>> level_sums;
   std::vector<float> slope_sums;
+  AlignedVector<Depth> depths;
 };
 
 class TileSolver {
  public:
   // `plane`: level receivers, or receivers in the plane of the ground.
-  TileSolver(const Terrain& terrain, const DomeLight& light, ReceiverPlane plane);
+  // `casters`, which are kept by reference, take their part of what the terrain leaves.
+  TileSolver(const Terrain& terrain, const DomeLight& light, ReceiverPlane plane,
+             const Casters& casters = no_casters());
+  static const Casters& no_casters();
 
   // May be called from several threads. `convergence` is that of the tile's centre.
   TileShares solve(const TerrainTile& tile, Angle convergence, TileRoom& room) const;
@@ -45,8 +51,20 @@ class TileSolver {
   int columns() const { return level_.columns(); }
 
  private:
-  void solve_level(HorizonSweep& sweep, Angle convergence, TileRoom& room, TileShares& out) const;
-  void solve_slope(HorizonSweep& sweep, Angle convergence, TileRoom& room, TileShares& out) const;
+  // A caster's view of the tile, and the group that it adds to.
+  struct CasterView {
+    std::unique_ptr<CasterTile> tile;
+    int group = 0;
+  };
+  std::vector<CasterView> views_of(const TerrainTile& tile) const;
+  void solve_level(HorizonSweep& sweep, std::span<const CasterView> views, Angle convergence, TileRoom& room,
+                   TileShares& out) const;
+  void solve_slope(HorizonSweep& sweep, std::span<const CasterView> views, Angle convergence, TileRoom& room,
+                   TileShares& out) const;
+  // Calls take(batch) with what the casters do to a few looks of a batch of horizons at a time.
+  template <typename Take>
+  void caster_batches(const HorizonBatch& horizons, std::span<const CasterView> views, Angle convergence,
+                      TileRoom& room, Take take) const;
   GridAzimuth near_azimuth_for(std::size_t look, Angle convergence) const;
   // Calls take(batches) with the horizons of several looks at a time.
   template <typename Take>
@@ -58,6 +76,8 @@ class TileSolver {
   ReceiverPlane plane_;
   LossTable level_;                      // units and column count also serve sloped receivers
   std::optional<SlopeLossTable> slope_;  // only for receivers in the plane of the ground
+  const Casters& casters_;
+  std::optional<CasterTables> caster_tables_;  // only where there are casters
   SweepOptions sweep_options_;
 };
 

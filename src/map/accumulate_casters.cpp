@@ -1,0 +1,138 @@
+#include "map/accumulate_casters.h"
+
+#include <algorithm>
+#include <cmath>
+
+#include "core/clones.h"
+#include "dome/horizon_steps.h"
+
+namespace sunfall {
+namespace {
+
+// 1 - e^-depth in 1/32768, for depths of four units each.
+constexpr int kDepthShift = 2;
+const std::vector<std::uint16_t>& taken_table() {
+  static const std::vector<std::uint16_t> table = [] {
+    std::vector<std::uint16_t> out((std::size_t{65536} >> kDepthShift) + 1);
+    for (std::size_t i = 0; i < out.size(); ++i) {
+      const double depth = double(i << kDepthShift) / kDepthUnits;
+      out[i] = static_cast<std::uint16_t>(std::lround(-32767.0 * std::expm1(-depth)));
+    }
+    return out;
+  }();
+  return table;
+}
+
+// Cells of a row whose sums stay in the first cache while looks and bands pass.
+constexpr int kChunk = 128;
+
+inline __attribute__((always_inline)) bool untouched(const DepthPlanes& planes, std::size_t first,
+                                                     int count) {
+  unsigned any = 0;
+  for (const Depth* depth : planes.groups) {
+    for (int i = 0; i < count; ++i) any |= depth[first + static_cast<std::size_t>(i)];
+  }
+  return any == 0;
+}
+
+// What is taken in each state, from the depths of the groups at one cell.
+inline __attribute__((always_inline)) bool taken_by_state(const DepthPlanes& planes, std::size_t cell,
+                                                          const CasterTables& tables,
+                                                          const std::uint16_t* table, std::uint16_t* taken) {
+  unsigned any = 0;
+  for (const Depth* depth : planes.groups) any |= depth[cell];
+  if (any == 0) return false;
+  for (int state = 0; state < tables.states(); ++state) {
+    const std::uint32_t* leaf = tables.leaf_of(state);
+    std::uint32_t depth = 0;
+    for (std::size_t g = 0; g < planes.groups.size(); ++g) depth += leaf[g] * planes.groups[g][cell];
+    taken[state] =
+        table[std::min<std::uint32_t>((depth >> 8) + (1 << (kDepthShift - 1)), 65536) >> kDepthShift];
+  }
+  return true;
+}
+
+// A state for every column of 12 months and four seasons, beam and sky.
+constexpr int kMostStates = 64;
+
+inline __attribute__((always_inline)) void add_band(const std::uint16_t* below, const std::uint16_t* low,
+                                                    const std::uint16_t* high, const std::uint16_t* taken,
+                                                    std::uint32_t* sums) {
+  for (int c = 0; c < kColumnBlock; ++c) {
+    const int from = std::max<int>(low[c], below[c]);
+    const int light = std::max<int>(high[c] - from, 0);
+    sums[c] += static_cast<std::uint32_t>((light * taken[c] + (1 << 14)) >> 15);
+  }
+}
+
+}  // namespace
+
+SUNFALL_CLONES void accumulate_casters(const CasterBatch& batch, const CasterTables& tables,
+                                       const LossTable& level, int block, std::uint32_t* sums) {
+  const std::uint16_t* const table = taken_table().data();
+  const std::uint16_t* const state_of = tables.state_of_column().data() + block * kColumnBlock;
+  std::uint16_t by_state[kMostStates];
+  std::uint16_t taken[kColumnBlock];
+  const std::size_t right = batch.by_columns ? static_cast<std::size_t>(batch.rows) : 1;
+  const std::size_t down = batch.by_columns ? 1 : static_cast<std::size_t>(batch.columns);
+  for (int row = 0; row < batch.rows; ++row) {
+    for (int column = 0; column < batch.columns; column += kChunk) {
+      const int count = std::min(kChunk, batch.columns - column);
+      const std::size_t first = static_cast<std::size_t>(row) * batch.columns + column;
+      for (const CasterLook& look : batch.looks) {
+        const std::uint16_t* steps =
+            look.steps + static_cast<std::size_t>(row) * down + static_cast<std::size_t>(column) * right;
+        const std::uint16_t* const below = level.look(look.look, block);
+        const std::uint16_t* const edges = tables.edges(look.look, block);
+        for (const DepthPlanes& planes : look.bands) {
+          if (untouched(planes, first, count)) continue;
+          const std::uint16_t* const low = edges + static_cast<std::size_t>(planes.band) * kColumnBlock;
+          for (int i = 0; i < count; ++i) {
+            const std::size_t cell = first + static_cast<std::size_t>(i);
+            if (!taken_by_state(planes, cell, tables, table, by_state)) continue;
+            for (int c = 0; c < kColumnBlock; ++c) taken[c] = by_state[state_of[c]];
+            add_band(
+                below + static_cast<std::size_t>(steps[static_cast<std::size_t>(i) * right]) * kColumnBlock,
+                low, low + kColumnBlock, taken, sums + cell * kColumnBlock);
+          }
+        }
+      }
+    }
+  }
+}
+
+SUNFALL_CLONES void accumulate_casters_on_slope(const CasterBatch& batch, const CasterTables& tables,
+                                                const SlopeTables& slope, std::size_t first_look,
+                                                float* sums) {
+  const std::uint16_t* const table = taken_table().data();
+  std::uint16_t by_state[kMostStates];
+  const int width = slope.width;
+  for (int row = 0; row < batch.rows; ++row) {
+    for (int column = 0; column < batch.columns; ++column) {
+      const std::size_t cell = static_cast<std::size_t>(row) * batch.columns + column;
+      const std::size_t place = batch.by_columns ? static_cast<std::size_t>(column) * batch.rows + row : cell;
+      for (const CasterLook& look : batch.looks) {
+        const std::size_t line = look.look - first_look;
+        const float rise = slope.rise_east[cell] * slope.towards_east[line] +
+                           slope.rise_north[cell] * slope.towards_north[line];
+        const int step = std::max<int>(look.steps[place], horizon_step(rise));
+        const float* below = slope.tables[line] + static_cast<std::size_t>(step) * 2 * width;
+        for (const DepthPlanes& planes : look.bands) {
+          if (!taken_by_state(planes, cell, tables, table, by_state)) continue;
+          const float* low =
+              tables.slope_edges(look.look) + static_cast<std::size_t>(planes.band) * 2 * width;
+          const float* high = low + 2 * width;
+          for (int c = 0; c < width; ++c) {
+            const float level = high[c] - std::max(low[c], below[c]);
+            if (level <= 0.0F) continue;
+            const float facing = high[width + c] - std::max(low[width + c], below[width + c]);
+            const float taken = static_cast<float>(by_state[tables.state_of_column()[c]]) * (1.0F / 32767.0F);
+            sums[cell * width + c] += taken * std::max(0.0F, level - rise * facing);
+          }
+        }
+      }
+    }
+  }
+}
+
+}  // namespace sunfall
