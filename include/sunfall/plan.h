@@ -2,11 +2,13 @@
 // The plan: one TOML file that names every input and every choice, read into typed values.
 // Unknown keys are errors that name the nearest known key; every error tells file, line and key.
 
+#include <array>
 #include <filesystem>
 #include <optional>
 #include <string>
 #include <vector>
 
+#include "sunfall/crop_rows.h"
 #include "sunfall/dome.h"
 #include "sunfall/grid.h"
 #include "sunfall/light.h"
@@ -32,6 +34,22 @@ struct PlotsPlan {
   std::optional<std::string> crop;  // field that names each plot's crop
 };
 
+// Polygons of a vector layer.
+struct AreaPlan {
+  std::filesystem::path file;
+  std::string layer;  // empty: the file's only layer
+  std::string where;  // a filter on the layer's fields; empty: all
+};
+
+struct RowsPlan {
+  std::string name;   // may be empty
+  std::string where;  // "farm.toml:30 rows.area", for errors found later
+  AreaPlan area;
+  Azimuth azimuth;
+  CropRows rows;
+  std::array<double, 12> leafing = {1, 1, 1, 1, 1, 1, 1, 1, 1, 1, 1, 1};  // share of full leaf, by month
+};
+
 struct DomePlan {
   DomeQuality quality = DomeQuality::standard;
   SkyModel sky = SkyModel::clearness;
@@ -52,6 +70,7 @@ struct Plan {
   LightOptions light_options;
   std::vector<Period> periods;  // the twelve months, then named seasons in the plan's order
   std::optional<PlotsPlan> plots;
+  std::vector<RowsPlan> rows;
   DomePlan dome;
   OutputPlan output;
   std::vector<std::string> defaults;  // "site.receiver_height = 0.5 m": what the plan left open

@@ -21,7 +21,9 @@ std::vector<std::string> all_quoted(const std::vector<std::string>& names) {
 
 std::string Bounds::words() const { return plain(least) + " to " + plain(most); }
 
-NumberKey::operator KeyNote() const { return {name, "number", bounds.unit, plain(fallback), bounds.words()}; }
+NumberKey::operator KeyNote() const {
+  return {name, "number", bounds.unit, required ? kRequired : plain(fallback), bounds.words()};
+}
 
 WholeKey::operator KeyNote() const {
   return {name, "whole number", bounds.unit, plain(fallback), bounds.words()};

@@ -33,6 +33,7 @@ struct NumberKey {
   std::string name;
   Bounds bounds;
   double fallback = 0.0;
+  bool required = false;  // then there is no fallback
   operator KeyNote() const;
 };
 

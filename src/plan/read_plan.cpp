@@ -20,11 +20,23 @@ bool holds(const std::vector<std::string>& names, const std::string& name) {
   return std::find(names.begin(), names.end(), name) != names.end();
 }
 
+bool may_be_many(const std::string& name) {
+  for (const TableRule& rule : table_rules()) {
+    if (rule.shape.name == name) return rule.many;
+  }
+  return false;
+}
+
 void refuse_top_level(const toml::key& key, const toml::node& node, const Reading& reading) {
   const std::string name(key.str());
   const std::string where = reading.file.where(line_of(key), joined_key("", name));
   const std::vector<std::string> known = table_names();
   if (holds(known, name)) {
+    if (may_be_many(name)) {
+      if (node.is_array_of_tables()) return;
+      throw Error(ErrorKind::plan, {"must be one or more tables of an array", where, described(node),
+                                    "Write [[" + name + "]]"});
+    }
     if (node.is_table()) return;
     throw Error(ErrorKind::plan, {"must be one table", where, described(node), "Write [" + name + "]"});
   }
@@ -47,6 +59,18 @@ TableReader open_table(const toml::table& root, const TableShape& shape, Reading
   return {reading, shape, entry->second.as_table(), line_of(entry->first)};
 }
 
+// All tables of an array, in the plan's order.
+void read_each(const toml::table& root, const TableRule& rule, Reading& reading, Plan& plan) {
+  const toml::node* node = root.get(rule.shape.name);
+  if (node == nullptr) return;
+  for (const toml::node& element : *node->as_array()) {
+    TableReader table(reading, rule.shape, element.as_table(),
+                      static_cast<long>(element.source().begin.line));
+    rule.read(table, plan);
+    table.finish();
+  }
+}
+
 }  // namespace
 
 Plan read_plan(const std::filesystem::path& path) {
@@ -56,6 +80,10 @@ Plan read_plan(const std::filesystem::path& path) {
   Plan plan;
   plan.file = path;
   for (const TableRule& rule : table_rules()) {
+    if (rule.many) {
+      read_each(root, rule, reading, plan);
+      continue;
+    }
     TableReader table = open_table(root, rule.shape, reading);
     rule.read(table, plan);
     table.finish();

@@ -124,6 +124,7 @@ double TableReader::number_within(const std::string& key, const std::string& sub
 double TableReader::number(const NumberKey& key) {
   const toml::node* node = take(key.name);
   if (node != nullptr) return number_within(key.name, "", key.bounds, *node);
+  if (key.required) required(key.name);
   note_default(key.name, with_unit(plain(key.fallback), key.bounds.unit));
   return key.fallback;
 }

@@ -6,6 +6,7 @@
 #include "plan/periods_table.h"
 #include "plan/plan_table.h"
 #include "plan/plots_table.h"
+#include "plan/rows_table.h"
 #include "plan/site_table.h"
 
 namespace sunfall {
@@ -17,6 +18,7 @@ const std::vector<TableRule>& table_rules() {
       {light_shape(), read_light_table},  // before periods: it sets the year
       {periods_shape(), read_periods_table},
       {plots_shape(), read_plots_table},
+      {rows_shape(), read_rows_table, true},
       {dome_shape(), read_dome_table},
       {output_shape(), read_output_table},
   };
@@ -24,8 +26,7 @@ const std::vector<TableRule>& table_rules() {
 }
 
 const std::vector<std::string>& tables_not_built_yet() {
-  static const std::vector<std::string> names = {"canopy", "rows",  "house",  "panels",
-                                                 "choice", "lamps", "screens"};
+  static const std::vector<std::string> names = {"canopy", "house", "panels", "choice", "lamps", "screens"};
   return names;
 }
 

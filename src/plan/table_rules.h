@@ -13,8 +13,10 @@ namespace sunfall {
 
 struct TableRule {
   TableShape shape;
-  // Called once per plan, also where the plan lacks the table (then all its keys are absent).
+  // Called once per plan, also where the plan lacks the table (then all its keys are absent); where there may
+  // be `many`, [[name]], once for each that the plan holds.
   void (*read)(TableReader& table, Plan& plan);
+  bool many = false;
 };
 
 // In the order in which they are read: a table may use what an earlier one left in the plan.

@@ -30,7 +30,7 @@ std::string plan_page() {
 }
 
 std::vector<TableShape> documented_tables(const std::string& page) {
-  static const std::regex heading("##+ `\\[([^\\]]+)\\]`");
+  static const std::regex heading("##+ `\\[+([^\\]]+)\\]+`");
   static const std::regex row("\\| `.*\\|");
   std::vector<TableShape> tables;
   std::istringstream stream(page);
