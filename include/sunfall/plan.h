@@ -34,7 +34,7 @@ struct PlotsPlan {
   std::optional<std::string> crop;  // field that names each plot's crop
 };
 
-// Polygons of a vector layer.
+// Features of a vector layer.
 struct AreaPlan {
   std::filesystem::path file;
   std::string layer;  // empty: the file's only layer
@@ -47,6 +47,50 @@ struct RowsPlan {
   AreaPlan area;
   Azimuth azimuth;
   CropRows rows;
+  std::array<double, 12> leafing = {1, 1, 1, 1, 1, 1, 1, 1, 1, 1, 1, 1};  // share of full leaf, by month
+};
+
+// The same everywhere, or what a raster says of each cell.
+struct NumberOrFile {
+  double number = 0.0;
+  std::optional<std::filesystem::path> file;
+};
+
+// The same for all features, or what a field says of each.
+struct NumberOrField {
+  double number = 0.0;
+  std::string field;  // empty: the number
+};
+
+// Points: trees, each crown an ellipsoid. Polygons: hedges and belts, upright walls of leaf.
+struct TreesPlan {
+  AreaPlan layer;
+  NumberOrField height_m;                      // top of the leaves above the ground
+  NumberOrField crown_base_m;                  // lowest leaves above the ground
+  std::optional<NumberOrField> crown_width_m;  // of points
+  std::optional<NumberOrField> leaf_density;   // nothing: by the windbreak's porosity
+  std::string species;                         // field of labels; empty: none
+};
+
+// Leaf density by what is seen straight through: porosity = exp(-G · clumping · density · width).
+struct WindbreakPlan {
+  double optical_porosity = 0.5;  // 0.01 to 1, level view, full leaf
+  double width_m = 0.0;           // of the leaves, along the view
+  std::string where;              // "farm.toml:34 canopy.optical_porosity"
+};
+
+// Leaves in one and the same state by month. Either `trees`, or top, base and leaf_density.
+struct CanopyPlan {
+  std::string name;    // may be empty
+  std::string where;   // "farm.toml:30 canopy", for errors found later
+  NumberOrFile top_m;  // above the ground
+  NumberOrFile base_m;
+  std::optional<NumberOrFile> leaf_density;  // m2 m-3; nothing: by the windbreak's porosity
+  std::optional<TreesPlan> trees;
+  std::optional<WindbreakPlan> windbreak;
+  double leaf_angle = 1.0;  // these three as in CropRows
+  double clumping = 1.0;
+  double absorptance = 0.85;
   std::array<double, 12> leafing = {1, 1, 1, 1, 1, 1, 1, 1, 1, 1, 1, 1};  // share of full leaf, by month
 };
 
@@ -70,6 +114,7 @@ struct Plan {
   LightOptions light_options;
   std::vector<Period> periods;  // the twelve months, then named seasons in the plan's order
   std::optional<PlotsPlan> plots;
+  std::vector<CanopyPlan> canopy;
   std::vector<RowsPlan> rows;
   DomePlan dome;
   OutputPlan output;

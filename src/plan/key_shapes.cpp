@@ -25,6 +25,11 @@ NumberKey::operator KeyNote() const {
   return {name, "number", bounds.unit, required ? kRequired : plain(fallback), bounds.words()};
 }
 
+NumberOrTextKey::operator KeyNote() const {
+  return {name, text == Text::path ? "number or path" : "number or field", bounds.unit,
+          fallback ? plain(*fallback) : or_required(absent), bounds.words()};
+}
+
 WholeKey::operator KeyNote() const {
   return {name, "whole number", bounds.unit, plain(fallback), bounds.words()};
 }

@@ -37,6 +37,19 @@ struct NumberKey {
   operator KeyNote() const;
 };
 
+// A number, or a text in its place: the path of a raster, or the name of a layer's field. Required where
+// there is neither a fallback nor `absent`, which says what it means to leave it out.
+struct NumberOrTextKey {
+  enum class Text { path, field };
+
+  std::string name;
+  Text text;
+  Bounds bounds;
+  std::optional<double> fallback;
+  std::string absent;
+  operator KeyNote() const;
+};
+
 struct WholeKey {
   std::string name;
   Bounds bounds;

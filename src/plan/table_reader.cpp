@@ -129,6 +129,51 @@ double TableReader::number(const NumberKey& key) {
   return key.fallback;
 }
 
+std::optional<double> TableReader::number_if_given(const NumberKey& key) {
+  const toml::node* node = take(key.name);
+  if (node == nullptr) return std::nullopt;
+  return number_within(key.name, "", key.bounds, *node);
+}
+
+std::optional<double> TableReader::number_in_place_of_text(const NumberOrTextKey& key,
+                                                           const toml::node& node) const {
+  const bool is_field = key.text == NumberOrTextKey::Text::field;
+  if (!node.is_string()) {
+    if (number_in(node)) return number_within(key.name, "", key.bounds, node);
+    refuse_type(key.name,
+                is_field ? "a number, or the name of a field in quotes"
+                         : "a number, or the path of a raster in quotes",
+                node);
+  }
+  if (reads_as_number(node)) {
+    refuse(key.name, is_field ? "must be a number or a field's name" : "must be a number or a raster's path",
+           described(node), "Write the number without quotes");
+  }
+  return std::nullopt;
+}
+
+std::optional<NumberOrFile> TableReader::number_or_file(const NumberOrTextKey& key) {
+  const toml::node* node = take(key.name);
+  if (node == nullptr) {
+    if (!key.fallback) return std::nullopt;
+    note_default(key.name, with_unit(plain(*key.fallback), key.bounds.unit));
+    return NumberOrFile{*key.fallback, std::nullopt};
+  }
+  if (const auto value = number_in_place_of_text(key, *node)) return NumberOrFile{*value, std::nullopt};
+  return NumberOrFile{0.0, input_path(reading_.file, node->as_string()->get(), where(key.name))};
+}
+
+std::optional<NumberOrField> TableReader::number_or_field(const NumberOrTextKey& key) {
+  const toml::node* node = take(key.name);
+  if (node == nullptr) {
+    if (!key.fallback) return std::nullopt;
+    note_default(key.name, with_unit(plain(*key.fallback), key.bounds.unit));
+    return NumberOrField{*key.fallback, ""};
+  }
+  if (const auto value = number_in_place_of_text(key, *node)) return NumberOrField{*value, ""};
+  return NumberOrField{0.0, text_of(key.name, *node)};
+}
+
 int TableReader::whole(const WholeKey& key) {
   const toml::node* node = take(key.name);
   if (node == nullptr) {

@@ -17,6 +17,7 @@
 #include "plan/plan_file.h"
 #include "plan/words.h"
 #include "sunfall/error.h"
+#include "sunfall/plan.h"
 
 namespace sunfall {
 
@@ -39,6 +40,10 @@ class TableReader {
   std::string where(const std::string& key) const;
 
   double number(const NumberKey& key);
+  // Nothing where the key is absent and has no fallback. A file must exist; a field's name is a text.
+  std::optional<NumberOrFile> number_or_file(const NumberOrTextKey& key);
+  std::optional<NumberOrField> number_or_field(const NumberOrTextKey& key);
+  std::optional<double> number_if_given(const NumberKey& key);
   int whole(const WholeKey& key);
   bool flag(const FlagKey& key);
   std::string text(const TextKey& key);
@@ -73,6 +78,8 @@ class TableReader {
   [[noreturn]] void refuse_at(long line, const std::string& key, Error::Parts parts) const;
   [[noreturn]] void refuse_type(const std::string& key, const std::string& needed,
                                 const toml::node& node) const;
+  // The number of a key that may hold a text; nothing where it holds one. The node must not be null.
+  std::optional<double> number_in_place_of_text(const NumberOrTextKey& key, const toml::node& node) const;
   double number_within(const std::string& key, const std::string& subject, const Bounds& bounds,
                        const toml::node& node) const;
   std::string text_of(const std::string& key, const toml::node& node) const;

@@ -1,5 +1,6 @@
 #include "plan/table_rules.h"
 
+#include "plan/canopy_table.h"
 #include "plan/dome_table.h"
 #include "plan/light_table.h"
 #include "plan/output_table.h"
@@ -18,6 +19,7 @@ const std::vector<TableRule>& table_rules() {
       {light_shape(), read_light_table},  // before periods: it sets the year
       {periods_shape(), read_periods_table},
       {plots_shape(), read_plots_table},
+      {canopy_shape(), read_canopy_table, true},
       {rows_shape(), read_rows_table, true},
       {dome_shape(), read_dome_table},
       {output_shape(), read_output_table},
@@ -26,7 +28,7 @@ const std::vector<TableRule>& table_rules() {
 }
 
 const std::vector<std::string>& tables_not_built_yet() {
-  static const std::vector<std::string> names = {"canopy", "house", "panels", "choice", "lamps", "screens"};
+  static const std::vector<std::string> names = {"house", "panels", "choice", "lamps", "screens"};
   return names;
 }
 

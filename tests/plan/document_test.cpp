@@ -58,7 +58,7 @@ TEST(PlanDocument, NamesEveryTableThatIsNotBuiltYet) {
 TEST(PlanDocument, HoldsPlansThatCanBeRead) {
   const PlanFolder folder;
   const std::vector<std::string> plans = example_plans(plan_page());
-  ASSERT_EQ(plans.size(), 6U);
+  ASSERT_EQ(plans.size(), 7U);
   const Plan whole = folder.read(plans[0]);
   EXPECT_EQ(whole.name, "Alder Reach");
   EXPECT_THAT(whole.defaults, ::testing::ElementsAre("light.year = 2025", "periods.months = true"));
@@ -70,6 +70,10 @@ TEST(PlanDocument, HoldsPlansThatCanBeRead) {
   EXPECT_EQ(std::get<GridSource>(grid.light).beam, "fdir");
   EXPECT_EQ(std::get<SunshineSource>(folder.read(plans[4]).light).hours, "sunshine_hours");
   EXPECT_EQ(std::get<MonthlyGlobalSource>(folder.read(plans[5]).light).years, 10);
+  const Plan leaves = folder.read(plans[6]);
+  ASSERT_EQ(leaves.canopy.size(), 2U);
+  EXPECT_EQ(leaves.canopy[0].trees->height_m.field, "height");
+  EXPECT_EQ(leaves.rows.at(0).area.where, "id = 'P3'");
 }
 
 }  // namespace

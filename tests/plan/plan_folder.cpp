@@ -13,7 +13,8 @@ PlanFolder::PlanFolder() {
   std::string pattern = (fs::temp_directory_path() / "sunfall-plan-XXXXXX").string();
   if (mkdtemp(pattern.data()) == nullptr) throw std::runtime_error("no temporary folder");
   path_ = pattern;
-  for (const char* name : {"ground.tif", "surface.tif", "county.tif", "plots.gpkg", "station.csv", "reanalysis.nc"})
+  for (const char* name : {"ground.tif", "surface.tif", "county.tif", "plots.gpkg", "station.csv", "reanalysis.nc",
+                           "trees.gpkg", "tree_top.tif"})
     write(name, "");
 }
 

@@ -12,7 +12,8 @@ namespace sunfall::testing {
 
 class PlanFolder {
  public:
-  // Holds empty files ground.tif, surface.tif, county.tif, plots.gpkg, station.csv and reanalysis.nc.
+  // Holds empty files ground.tif, surface.tif, county.tif, plots.gpkg, station.csv, reanalysis.nc,
+  // trees.gpkg and tree_top.tif.
   PlanFolder();
   PlanFolder(const PlanFolder&) = delete;
   PlanFolder& operator=(const PlanFolder&) = delete;
