@@ -30,6 +30,14 @@ struct OpenField {
   std::vector<OpenYear> years;          // each year alone
 };
 
+// What a plot of crop rows takes, mean over its cells; mol per m2 of ground and day, per period.
+struct CropLight {
+  std::size_t cells = 0;
+  std::vector<double> came;         // at the tops of the rows
+  std::vector<double> taken_right;  // of it, from the right of the rows' azimuth
+  std::vector<double> taken_left;
+};
+
 struct MapLayer {
   std::string file_name;
   std::string description;
@@ -42,6 +50,7 @@ struct MapResult {
   std::vector<Period> periods;
   OpenField open;
   std::vector<std::vector<double>> plot_shares;  // [plot][beam of every period, then sky]: mean of its cells
+  std::vector<CropLight> crops;                  // by the plan's rows
   std::string shares_from;                       // the finished run's folder; empty where geometry was solved
   std::vector<std::string> notes;                // assumptions that were made for the user
   double valid_fraction = 0.0;                   // cells with a value

@@ -101,6 +101,53 @@ SUNFALL_CLONES void accumulate_casters(const CasterBatch& batch, const CasterTab
   }
 }
 
+SUNFALL_CLONES void accumulate_crops(const CasterBatch& batch, const CasterTables& tables,
+                                     const LossTable& level, TileCrops& crops) {
+  const std::uint16_t* const table = taken_table().data();
+  const int columns = crops.columns;
+  float part[kMostStates];
+  for (std::size_t i = 0; i < crops.crops.size(); ++i) {
+    const TileCrops::Crop& crop = crops.crops[i];
+    for (std::size_t k = 0; k < crop.cells.size(); ++k) {
+      const std::size_t cell = crop.cells[k];
+      const std::size_t row = cell / batch.columns, column = cell % batch.columns;
+      const std::size_t place = batch.by_columns ? column * batch.rows + row : cell;
+      float* const right = crops.taken.data() + crop.slots[k] * std::size_t{2} * columns;
+      float* const left = right + columns;
+      float* const came = crops.came.data() + crop.slots[k] * std::size_t{1} * columns;
+      for (const CasterLook& look : batch.looks) {
+        const std::size_t step = std::size_t{look.steps[place]} * kColumnBlock;
+        for (const DepthPlanes& planes : look.bands) {
+          for (int state = 0; state < tables.states(); ++state) {
+            const std::uint32_t* leaf = tables.leaf_of(state);
+            std::uint32_t depth = 0;
+            for (std::size_t g = 0; g < planes.groups.size(); ++g) {
+              if (!tables.of_crops(static_cast<int>(g))) depth += leaf[g] * planes.groups[g][cell];
+            }
+            const std::uint32_t read =
+                std::min<std::uint32_t>((depth >> 8) + (1 << (kDepthShift - 1)), 65536);
+            part[state] = (1.0F - static_cast<float>(table[read >> kDepthShift]) * (1.0F / 32767.0F)) *
+                          static_cast<float>(leaf[crop.group]) * (1.0F / 256.0F);
+          }
+          const CropTaken taken = planes.crops[i];
+          for (int c = 0; c < columns; ++c) {
+            const int block = c / kColumnBlock, at = c % kColumnBlock;
+            const std::uint16_t* low =
+                tables.edges(look.look, block) + static_cast<std::size_t>(planes.band) * kColumnBlock + at;
+            const int below = level.look(look.look, block)[step + static_cast<std::size_t>(at)];
+            const int light = std::max(low[kColumnBlock] - std::max<int>(low[0], below), 0);
+            const float share = static_cast<float>(light) * static_cast<float>(level.units()[c]) *
+                                part[tables.state_of_column()[c]];
+            right[c] += share * taken.right;
+            left[c] += share * taken.left;
+            came[c] += share;
+          }
+        }
+      }
+    }
+  }
+}
+
 SUNFALL_CLONES void accumulate_casters_on_slope(const CasterBatch& batch, const CasterTables& tables,
                                                 const SlopeTables& slope, std::size_t first_look,
                                                 float* sums) {

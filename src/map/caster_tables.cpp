@@ -72,11 +72,17 @@ CasterTables::CasterTables(const DomeLight& light, const std::vector<Look>& look
 void CasterTables::find_states(const DomeLight& light, const Casters& casters, int columns) {
   std::vector<std::array<double, 12>> leafings;
   for (const auto& caster : casters) {
-    const auto found = std::find(leafings.begin(), leafings.end(), caster->leafing());
-    group_of_.push_back(static_cast<int>(found - leafings.begin()));
-    if (found == leafings.end()) leafings.push_back(caster->leafing());
+    int group = 0;
+    while (group < groups_ &&
+           (leafings[group] != caster->leafing() || of_crops_[group] != caster->crop().has_value())) {
+      ++group;
+    }
+    group_of_.push_back(group);
+    if (group < groups_) continue;
+    leafings.push_back(caster->leafing());
+    of_crops_.push_back(caster->crop().has_value());
+    ++groups_;
   }
-  groups_ = static_cast<int>(leafings.size());
   std::map<std::vector<std::uint32_t>, int> known;
   const std::size_t periods = light.periods.size();
   const int padded = (columns + kColumnBlock - 1) / kColumnBlock * kColumnBlock;

@@ -31,8 +31,9 @@ class CasterTables {
 
   const std::vector<CasterBand>& bands() const { return bands_; }
 
-  // Casters with the same leafing form a group and add up to one depth.
+  // Casters with the same leafing form a group and add up to one depth; crops have groups of their own.
   int groups() const { return groups_; }
+  bool of_crops(int group) const { return of_crops_[group]; }
   int group_of(std::size_t caster) const { return group_of_[caster]; }
 
   // Periods with the same leaves in every group form a state. Share of full leaf, in 1/256:
@@ -61,6 +62,7 @@ class CasterTables {
   std::vector<CasterBand> bands_;
   int groups_ = 0;
   std::vector<int> group_of_;
+  std::vector<bool> of_crops_;
   int states_ = 0;
   std::vector<std::uint32_t> leaf_;
   std::vector<std::uint16_t> state_of_column_;

@@ -3,6 +3,7 @@
 #include <mutex>
 
 #include "core/parallel.h"
+#include "map/crop_sums.h"
 #include "map/layers.h"
 #include "map/plot_shares.h"
 #include "map/tiles.h"
@@ -52,6 +53,7 @@ void LayerSet::fill(const TileWork& work, const std::string& stage, const MapOpt
   };
   std::vector<Sum> sums(tiles.size());  // by tile, so that totals add up in one order
   PlotShares plot_shares(options.plots, tiles.size());
+  CropSums crop_sums(plan_.rows.size(), tiles.size());
   on_all_cores(options.jobs, tiles.size(), [&](std::size_t turn) {
     stop_if_asked(progress);
     const std::size_t i = options.reverse_tiles ? tiles.size() - 1 - turn : turn;
@@ -61,6 +63,7 @@ void LayerSet::fill(const TileWork& work, const std::string& stage, const MapOpt
     light.sight = std::move(answer.sight);
     if (plan_.output.percentiles) light.over_years = percentiles_of(result_.open, shares);
     plot_shares.add(i, shares);
+    crop_sums.add(i, shares, result_.open);
     for (std::size_t cell = 0; cell < shares.usable.size(); ++cell) {
       sums[i].sight += light.sight[cell];
       sums[i].usable += shares.usable[cell] ? 1 : 0;
@@ -80,6 +83,7 @@ void LayerSet::fill(const TileWork& work, const std::string& stage, const MapOpt
   }
   result_.valid_fraction = double(usable) / double(frame.size());
   result_.plot_shares = plot_shares.means();
+  result_.crops = crop_sums.means(result_.periods.size());
   result_.seconds["light"] = watch.seconds();
 }
 

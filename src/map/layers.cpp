@@ -67,6 +67,19 @@ TileLight light_of(const TileShares& shares, const OpenField& open) {
     }
     light.year[cell] = sum;
   }
+  const TileCrops& crops = shares.crops;
+  if (!crops.cells.empty()) light.taken.assign(count + 1, std::vector<float>(cells, kMissing));
+  for (std::size_t slot = 0; slot < crops.cells.size(); ++slot) {
+    const float* right = crops.taken.data() + slot * 2 * static_cast<std::size_t>(crops.columns);
+    const float* left = right + crops.columns;
+    float sum = 0.0F;
+    for (std::size_t p = 0; p < count; ++p) {
+      const float value = beam[p] * (right[p] + left[p]) + sky[p] * (right[count + p] + left[count + p]);
+      light.taken[p][crops.cells[slot]] = value;
+      if (p < 12) sum += weight[p] * value;
+    }
+    light.taken[count][crops.cells[slot]] = sum;
+  }
   return light;
 }
 
@@ -92,6 +105,19 @@ std::vector<LayerRecipe> layers_of(const Plan& plan, const std::vector<Period>& 
       [](const TileLight& light, std::vector<float>& values) { lowest(light, nullptr, &values); });
   add({"sight.tif", "How much of the horizon the inputs cover, 1 = all", "1", kShareQuantum},
       [](const TileLight& light, std::vector<float>& values) { values = light.sight; });
+  for (std::size_t p = 0; !plan.rows.empty() && p <= periods.size(); ++p) {
+    const bool year = p == periods.size();
+    add({fmt::format("taken-{}.tif", year ? "year" : periods[p].name),
+         "Light taken by crop rows per area of ground, " +
+             (year ? "mean of the year" : period_title(periods[p])),
+         kDliUnit, kDliQuantum},
+        [p](const TileLight& light, std::vector<float>& values) {
+          if (light.taken.empty())
+            std::fill(values.begin(), values.end(), kMissing);
+          else
+            values = light.taken[p];
+        });
+  }
   if (plan.output.percentiles) {
     for (std::size_t i = 0; i < kYearPercents.size(); ++i) {
       for (std::size_t p = 0; p <= periods.size(); ++p) {

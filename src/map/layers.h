@@ -20,7 +20,8 @@ struct TileLight {
   std::vector<std::vector<float>> dli;  // [period][cell]
   std::vector<float> year;
   std::vector<float> sight;
-  TilePercentiles over_years;  // where they are wanted, else empty
+  std::vector<std::vector<float>> taken;  // [period, then the year][cell] by crop rows; missing elsewhere
+  TilePercentiles over_years;             // where they are wanted, else empty
 };
 TileLight light_of(const TileShares& shares, const OpenField& open);
 

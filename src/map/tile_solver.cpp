@@ -90,9 +90,35 @@ void TileSolver::batches(HorizonSweep& sweep, const CellWindow& window, Angle co
 std::vector<TileSolver::CasterView> TileSolver::views_of(const TerrainTile& tile) const {
   std::vector<CasterView> views;
   for (std::size_t i = 0; i < casters_.size(); ++i) {
-    if (auto view = casters_[i]->tile(tile)) views.push_back({std::move(view), caster_tables_->group_of(i)});
+    if (auto view = casters_[i]->tile(tile)) {
+      const std::optional<int> crop = casters_[i]->crop();
+      views.push_back({std::move(view), caster_tables_->group_of(i), crop});
+    }
   }
   return views;
+}
+
+TileCrops TileSolver::crops_of(std::span<const CasterView> views, std::size_t cells) const {
+  TileCrops out;
+  out.columns = columns();
+  std::vector<std::int32_t> slot_of;
+  for (const CasterView& view : views) {
+    if (!view.crop) continue;
+    if (slot_of.empty()) slot_of.assign(cells, -1);
+    TileCrops::Crop crop{view.group, view.tile->crop_cells(), {}};
+    for (const std::uint32_t cell : crop.cells) {
+      if (slot_of[cell] < 0) {
+        slot_of[cell] = static_cast<std::int32_t>(out.cells.size());
+        out.cells.push_back(cell);
+        out.numbers.push_back(*view.crop);
+      }
+      crop.slots.push_back(static_cast<std::uint32_t>(slot_of[cell]));
+    }
+    out.crops.push_back(std::move(crop));
+  }
+  out.taken.assign(out.cells.size() * 2 * out.columns, 0.0F);
+  out.came.assign(out.cells.size() * out.columns, 0.0F);
+  return out;
 }
 
 template <typename Take>
@@ -123,8 +149,11 @@ void TileSolver::caster_batches(const HorizonBatch& horizons, std::span<const Ca
         const std::span<Depth> plane(planes + cells * static_cast<std::size_t>(view.group), cells);
         touched = view.tile->add_depth(azimuth, bands[b].tangent, plane) || touched;
       }
-      if (!touched) continue;
-      DepthPlanes of_band{static_cast<int>(b), {}};
+      DepthPlanes of_band{static_cast<int>(b), {}, {}};
+      for (const CasterView& view : views) {
+        if (view.crop) of_band.crops.push_back(view.tile->taken(azimuth, bands[b].tangent));
+      }
+      if (!touched && of_band.crops.empty()) continue;
       for (int g = 0; g < groups; ++g) of_band.groups.push_back(planes + cells * static_cast<std::size_t>(g));
       of_look.bands.push_back(std::move(of_band));
       planes_used += static_cast<std::size_t>(groups);
@@ -153,6 +182,7 @@ void TileSolver::solve_level(HorizonSweep& sweep, std::span<const CasterView> vi
         for (int block = 0; block < blocks; ++block) {
           accumulate_casters(batch, *caster_tables_, level_, block, sums[block].data());
         }
+        accumulate_crops(batch, *caster_tables_, level_, out.crops);
       });
     }
   });
@@ -219,6 +249,7 @@ void TileSolver::solve_slope(HorizonSweep& sweep, std::span<const CasterView> vi
       if (views.empty()) continue;
       caster_batches(batch, views, convergence, room, [&](const CasterBatch& casters) {
         accumulate_casters_on_slope(casters, *caster_tables_, slope, first, sums.data());
+        accumulate_crops(casters, *caster_tables_, level_, out.crops);
       });
     }
   });
@@ -242,10 +273,12 @@ TileShares TileSolver::solve(const TerrainTile& tile, Angle convergence, TileRoo
   out.shares.resize(tile.usable.size() * out.columns);
   HorizonSweep sweep(tile, sweep_options_);
   const std::vector<CasterView> views = views_of(tile);
+  out.crops = crops_of(views, out.usable.size());
   if (plane_ == ReceiverPlane::level)
     solve_level(sweep, views, convergence, room, out);
   else
     solve_slope(sweep, views, convergence, room, out);
+  out.crops.crops.clear();  // they look into the views
   return out;
 }
 

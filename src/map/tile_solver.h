@@ -22,6 +22,7 @@ struct TileShares {
   int columns = 0;
   std::vector<char> usable;   // 0: no receiver here
   std::vector<float> shares;  // [cell][columns]
+  TileCrops crops;            // what crop rows take
   const float* of(std::size_t cell) const { return shares.data() + cell * columns; }
 };
 
@@ -55,8 +56,10 @@ class TileSolver {
   struct CasterView {
     std::unique_ptr<CasterTile> tile;
     int group = 0;
+    std::optional<int> crop;
   };
   std::vector<CasterView> views_of(const TerrainTile& tile) const;
+  TileCrops crops_of(std::span<const CasterView> views, std::size_t cells) const;
   void solve_level(HorizonSweep& sweep, std::span<const CasterView> views, Angle convergence, TileRoom& room,
                    TileShares& out) const;
   void solve_slope(HorizonSweep& sweep, std::span<const CasterView> views, Angle convergence, TileRoom& room,

@@ -86,7 +86,7 @@ class RowsTile : public CasterTile {
         if (!tile.usable[cell.index]) continue;
         cell.across_m = caster.plot().across_m(cell.place);
         cell.inside = caster.plot().contains(cell.place);
-        any_inside_ = any_inside_ || cell.inside;
+        if (cell.inside) crop_cells_.push_back(static_cast<std::uint32_t>(cell.index));
         // Within the plot receivers stand above the rows' own ground; beside it their height counts
         // from the plane that the rows follow.
         const std::size_t eye =
@@ -102,7 +102,7 @@ class RowsTile : public CasterTile {
 
   float highest_tangent(GridAzimuth azimuth) override {
     face(azimuth);
-    if (any_inside_) return 1.0e9F;
+    if (!crop_cells_.empty()) return 1.0e9F;
     // The steepest sight to the top of rows from beside them.
     double steepest = 0.0;
     for (const Seen& seen : seen_) {
@@ -137,6 +137,22 @@ class RowsTile : public CasterTile {
       added = true;
     }
     return added;
+  }
+
+  std::span<const std::uint32_t> crop_cells() const override { return crop_cells_; }
+
+  // Rows without end: what enters a plot from its sides is not counted to the cells there.
+  CropTaken taken(GridAzimuth azimuth, float tangent) override {
+    const GridAzimuth rows = caster_.plot().azimuth();
+    const RowRay ray = row_ray(rows, azimuth, tangent, caster_.plane().rise);
+    if (ray.meets_ground()) return {};
+    const double passes = cycle_passage(rows_, ray, caster_.leaves().depth(ray.sine), 0.0);
+    const double taken = (1.0 - passes) * (1.0 - caster_.leaves().reflected(ray.sine));
+    const double side = sin(azimuth.from_grid_north - rows.from_grid_north);
+    // Straight ahead or behind is of neither side.
+    if (std::abs(side) < 1e-9) return {static_cast<float>(0.5 * taken), static_cast<float>(0.5 * taken)};
+    return side > 0.0 ? CropTaken{static_cast<float>(taken), 0.0F}
+                      : CropTaken{0.0F, static_cast<float>(taken)};
   }
 
  private:
@@ -210,7 +226,7 @@ class RowsTile : public CasterTile {
   const RowsCaster& caster_;
   const CropRows& rows_;
   std::vector<Cell> cells_;
-  bool any_inside_ = false;
+  std::vector<std::uint32_t> crop_cells_;
   std::optional<GridAzimuth> faced_;
   std::vector<Seen> seen_;
   RowStretches stretches_;

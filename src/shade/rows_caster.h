@@ -17,6 +17,7 @@
 namespace sunfall {
 
 struct RowsInputs {
+  int number = 0;                            // among the plan's rows
   std::vector<std::vector<MapPoint>> rings;  // of the plot, on the map's CRS
   GridAzimuth azimuth;
   CropRows rows;
@@ -31,6 +32,7 @@ class RowsCaster : public Caster {
   RowsCaster(const RowsInputs& inputs, const Terrain& terrain);
 
   const std::array<double, 12>& leafing() const override { return inputs_.months; }
+  std::optional<int> crop() const override { return inputs_.number; }
   std::unique_ptr<CasterTile> tile(const TerrainTile& tile) const override;
 
   struct Plane {

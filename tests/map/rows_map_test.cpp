@@ -147,6 +147,56 @@ TEST(RowsInTheMap, WideCellsHaveTheMeanOfTheCycle) {
   }
 }
 
+// Black leaves: what comes to the tops of the rows is taken or reaches the ground. Receivers on the ground, cells
+// with the mean of the cycle, a hill in the south; and what is taken agrees with the study.
+TEST(RowsInTheMap, TakenAndPassedAreWhatCame) {
+  SceneOptions options = square(4.0);
+  options.receiver_height_m = 0.0;
+  const Scene scene([](double, double north) { return north < -300.0 ? 60.0 : 0.0; }, {}, options);
+  const DomeLight light = clear_months(Dome::of(DomeQuality::standard));
+  CropRows rows = orchard();
+  rows.absorptance = 1.0;
+  RowsInputs inputs;
+  inputs.rings = block(scene, 250.0);
+  inputs.azimuth = {Angle::degrees(30.0)};
+  inputs.rows = rows;
+  inputs.months.fill(1.0);
+  inputs.receiver_height_m = 0.0;
+  Casters casters;
+  casters.push_back(std::make_unique<RowsCaster>(inputs, scene.terrain()));
+  const TileSolver solver(scene.terrain(), light, ReceiverPlane::level, casters),
+      bare(scene.terrain(), light, ReceiverPlane::level);
+  const CellWindow window{140, 140, 20, 20};
+  const TileShares under = solver.solve(scene.terrain().tile(window), Angle()),
+                   open = bare.solve(scene.terrain().tile(window), Angle());
+  ASSERT_EQ(under.crops.cells.size(), 400U);
+  RowStudyRequest request;
+  request.rows = rows;
+  request.azimuths = {{Angle::degrees(30.0)}};
+  request.spacings_m = {rows.spacing_m};
+  request.heights_m = {rows.height_m};
+  const RowCase study = study_rows(light, request).cases.front();
+  for (std::size_t slot = 0; slot < 400; slot += 37) {
+    const std::size_t cell = under.crops.cells[slot];
+    for (int c = 0; c < 24; ++c) {
+      const float* right = under.crops.taken.data() + slot * 2 * 24;
+      const double taken = double(right[c]) + right[24 + c];
+      const double came = under.crops.came[slot * 24 + static_cast<std::size_t>(c)];
+      EXPECT_NEAR(came, open.of(cell)[c], 2e-4) << "column " << c;
+      EXPECT_NEAR(taken + under.of(cell)[c], came, 1.5e-3) << "column " << c;
+    }
+    for (const std::size_t month : {std::size_t{5}, std::size_t{6}}) {  // the hill takes least
+      const double beam = light.beam.open[month], sky = light.sky.open[month];
+      const float* right = under.crops.taken.data() + slot * 2 * 24;
+      const auto of_open = [&](const float* share) {
+        return (share[month] * beam + share[12 + month] * sky) / (beam + sky);
+      };
+      EXPECT_NEAR(of_open(right) + of_open(right + 24), study.taken[month], 0.01) << month;
+      EXPECT_NEAR(of_open(right), study.taken_right[month], 0.01) << month;
+    }
+  }
+}
+
 // Reversed rows are the same rows; what lies south of the plot at noon keeps its light, what lies north of it
 // loses some, and no cell has more than in the open.
 TEST(RowsInTheMap, ShadeFallsBesideThePlot) {
