@@ -21,9 +21,6 @@
 namespace sunfall {
 namespace {
 
-// The shore of the Dead Sea lies at -430 m, Everest at 8849 m.
-constexpr double kLowest_m = -500.0;
-constexpr double kHighest_m = 9000.0;
 constexpr int kBufferCells = 4'000'000;
 constexpr std::size_t kLongestProjection_bytes = 65536;
 
@@ -109,12 +106,14 @@ Stored stored_nodata(double nodata) {
 template <typename Stored>
 class Decoder {
  public:
-  explicit Decoder(const HeightCoding& coding)
+  Decoder(const HeightCoding& coding, const RasterMeaning& meaning)
       : nan_is_missing_(coding.nodata && std::isnan(*coding.nodata)),
         has_nodata_(coding.nodata && !nan_is_missing_),
         nodata_(has_nodata_ ? stored_nodata<Stored>(*coding.nodata) : Stored{}),
         scale_(static_cast<Stored>(coding.scale)),
-        offset_(static_cast<Stored>(coding.offset_m)) {}
+        offset_(static_cast<Stored>(coding.offset_m)),
+        least_(static_cast<Stored>(meaning.least)),
+        most_(static_cast<Stored>(meaning.most)) {}
 
   // The first column whose height cannot be, if any.
   std::optional<int> first_wrong(const Stored* stored, int columns) const {
@@ -141,7 +140,7 @@ class Decoder {
   }
   bool is_wrong(Stored value) const {
     const Stored h = height(value);
-    const bool believable = (h >= Stored(kLowest_m)) & (h <= Stored(kHighest_m));
+    const bool believable = (h >= least_) & (h <= most_);
     return !is_missing(value) & !believable;
   }
 
@@ -150,6 +149,8 @@ class Decoder {
   Stored nodata_;
   Stored scale_;
   Stored offset_;
+  Stored least_;
+  Stored most_;
 };
 
 }  // namespace
@@ -158,13 +159,14 @@ std::string raster_where(const std::filesystem::path& file, const std::string& r
   return fmt::format("{} ({})", file.string(), role);
 }
 
-HeightRaster::HeightRaster(const std::filesystem::path& file, const std::string& role)
+HeightRaster::HeightRaster(const std::filesystem::path& file, const std::string& role, RasterMeaning meaning)
     : where_(raster_where(file, role)),
+      meaning_(meaning),
       dataset_(open_raster(file, where_)),
       band_(dataset_->GetRasterBand(1)),
       coding_(coding_of(*band_)) {
   GdalGuard guard;
-  check_height_unit(*dataset_, where_);
+  if (meaning_.is_height) check_height_unit(*dataset_, where_);
   crs_ = crs_of(*dataset_, file);
   std::array<double, 6> transform{};
   if (dataset_->GetGeoTransform(transform.data()) == CE_None) transform_ = transform;
@@ -190,7 +192,7 @@ void HeightRaster::read(const CellWindow& window, float* heights, std::size_t st
 template <typename Stored>
 void HeightRaster::read_as(const CellWindow& window, float* heights, std::size_t stride) const {
   constexpr bool in_place = std::is_same_v<Stored, float>;
-  const Decoder<Stored> decoder(coding_);
+  const Decoder<Stored> decoder(coding_, meaning_);
   // Floats are decoded where they land, in one go; wider types pass through a buffer of some rows.
   const int rows_at_once = in_place ? window.rows : std::clamp(kBufferCells / window.columns, 1, window.rows);
   std::vector<Stored> buffer(in_place ? 0 : static_cast<std::size_t>(rows_at_once) * window.columns);
@@ -251,10 +253,11 @@ void HeightRaster::refuse(CellIndex cell, double height_m) const {
   }
   throw Error(
       ErrorKind::data,
-      {std::isnan(height_m) ? "a height is NaN, which is not declared as nodata" : "a height cannot be",
-       fmt::format("{}, {}", where_, place), fmt::format("{} m", height_m),
-       fmt::format("Heights lie within {} to {} m; is nodata set? Declare it: gdal_edit.py -a_nodata {} FILE",
-                   kLowest_m, kHighest_m, height_m)});
+      {std::isnan(height_m) ? fmt::format("a {} is NaN, which is not declared as nodata", meaning_.value)
+                            : fmt::format("a {} cannot be", meaning_.value),
+       fmt::format("{}, {}", where_, place), fmt::format("{}{}", height_m, meaning_.unit),
+       fmt::format("{} lie within {} to {}{}; is nodata set? Declare it: gdal_edit.py -a_nodata {} FILE",
+                   meaning_.values, meaning_.least, meaning_.most, meaning_.unit, height_m)});
 }
 
 }  // namespace sunfall

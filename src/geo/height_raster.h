@@ -9,6 +9,7 @@
 #include <optional>
 #include <string>
 
+#include "geo/raster_meaning.h"
 #include "sunfall/grid.h"
 
 namespace sunfall {
@@ -22,8 +23,9 @@ struct HeightCoding {
 
 class HeightRaster {
  public:
-  // Throws Error(data) where the file is no single-band raster of heights in metres.
-  HeightRaster(const std::filesystem::path& file, const std::string& role);
+  // Throws Error(data) where the file is no single-band raster of heights in metres (or what else is meant).
+  HeightRaster(const std::filesystem::path& file, const std::string& role,
+               RasterMeaning meaning = RasterMeaning::height());
 
   int columns() const { return dataset_->GetRasterXSize(); }
   int rows() const { return dataset_->GetRasterYSize(); }
@@ -49,6 +51,7 @@ class HeightRaster {
   [[noreturn]] void refuse(CellIndex cell, double height_m) const;
 
   std::string where_;
+  RasterMeaning meaning_;
   GDALDatasetUniquePtr dataset_;
   GDALRasterBand* band_;
   HeightCoding coding_;

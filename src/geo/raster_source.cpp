@@ -115,8 +115,9 @@ RasterSource::RasterSource(RasterSource&&) noexcept = default;
 RasterSource& RasterSource::operator=(RasterSource&&) noexcept = default;
 RasterSource::~RasterSource() = default;
 
-RasterSource RasterSource::open(const std::filesystem::path& file, const std::string& role) {
-  HeightRaster raster(file, role);
+RasterSource RasterSource::open(const std::filesystem::path& file, const std::string& role,
+                                RasterMeaning meaning) {
+  HeightRaster raster(file, role, meaning);
   GridFrame frame = checked_frame(raster);
   return RasterSource(std::make_unique<State>(State{file, role, std::move(raster), std::move(frame)}));
 }

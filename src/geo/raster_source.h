@@ -5,6 +5,7 @@
 #include <memory>
 #include <string>
 
+#include "geo/raster_meaning.h"
 #include "sunfall/grid.h"
 
 namespace sunfall {
@@ -14,7 +15,9 @@ namespace sunfall {
 class RasterSource {
  public:
   // `role` names the raster in messages ("ground", "surface"). Throws Error(data).
-  static RasterSource open(const std::filesystem::path& file, const std::string& role);
+  // `meaning` says what its cells count where that is not a height.
+  static RasterSource open(const std::filesystem::path& file, const std::string& role,
+                           RasterMeaning meaning = RasterMeaning::height());
   RasterSource(RasterSource&&) noexcept;
   RasterSource& operator=(RasterSource&&) noexcept;
   ~RasterSource();
@@ -25,7 +28,7 @@ class RasterSource {
 
   // Heights in the window; missing where the raster has nodata or the window leaves its frame.
   // Throws Error(data) for heights that are NaN without being nodata, infinite or absurd
-  // (beyond -500 to 9000 m), naming the cell; Error(io) when reading fails.
+  // (beyond -500 to 9000 m, or what is meant), naming the cell; Error(io) when reading fails.
   Grid<float> read(const CellWindow& window) const;
 
  private:
