@@ -55,12 +55,14 @@ CellLines lines_in(double centre_column, double centre_row, double radius, int p
   CellLines sums;
   const LineRange down = lines_within(centre_row, radius, per_side);
   const LineRange along = lines_within(centre_column, radius, per_side);
+  const double step = 1.0 / (per_side * radius);
+  const double west = (0.5 / per_side - centre_column) / radius;
+  const double north = (0.5 / per_side - centre_row) / radius;
   for (int j = down.first; j <= down.last; ++j) {
-    const double y = ((j + 0.5) / per_side - centre_row) / radius;
+    const double y = north + j * step;
     for (int i = along.first; i <= along.last; ++i) {
-      const double x = ((i + 0.5) / per_side - centre_column) / radius;
-      const double square = 1.0 - x * x - y * y;
-      if (square <= 0.0) continue;
+      const double x = west + i * step;
+      const double square = std::max(0.0, 1.0 - x * x - y * y);
       const double height = std::sqrt(square);
       sums.heights += height;
       sums.cubes += height * square;

@@ -32,15 +32,6 @@ Error::Parts refused(const std::vector<TestFeature>& features, const std::string
 
 TestFeature plot(const std::string& wkt, const std::string& kind = "P1") { return {wkt, {}, kind}; }
 
-double signed_area_m2(const std::vector<MapPoint>& ring) {
-  double twice = 0.0;
-  for (std::size_t i = 0; i + 1 < ring.size(); ++i) {
-    const MapPoint a = ring[i], b = ring[i + 1];
-    twice += (a.east - 6e5) * (b.north - 5.8e6) - (b.east - 6e5) * (a.north - 5.8e6);
-  }
-  return twice / 2.0;
-}
-
 TEST(PlotArea, HolesAndPartsOfAllThatTheFilterSelects) {
   const std::string with_hole =
       "POLYGON((600010 5799990,600010 5799960,600050 5799960,600050 5799990,600010 5799990),"

@@ -13,6 +13,7 @@
 #include "geo/geo_support.h"
 #include "geo/geodesy.h"
 #include "geo/layer_writer.h"
+#include "geo/vector_file.h"
 
 namespace sunfall::test {
 namespace {
@@ -83,16 +84,6 @@ Error::Parts refused(const std::vector<Shape>& shapes, const VectorOrder& order 
   EXPECT_THAT(parts.where, HasSubstr("plots.gpkg"));
   EXPECT_FALSE(parts.remedy.empty());
   return parts;
-}
-
-double signed_area_m2(const std::vector<MapPoint>& ring) {
-  double twice = 0.0;
-  for (std::size_t i = 0; i < ring.size(); ++i) {
-    const MapPoint a = ring[i];
-    const MapPoint b = ring[(i + 1) % ring.size()];
-    twice += (a.east - 6e5) * (b.north - 5.8e6) - (b.east - 6e5) * (a.north - 5.8e6);
-  }
-  return twice / 2.0;
 }
 
 TEST(Plots, PolygonsWithHolesAndParts) {

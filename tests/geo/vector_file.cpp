@@ -48,4 +48,14 @@ std::string rectangle(double west, double north, double east, double south) {
                      600000 + east, 5800000 - north);
 }
 
+double signed_area_m2(const std::vector<MapPoint>& ring) {
+  double twice = 0.0;
+  for (std::size_t i = 0; i < ring.size(); ++i) {
+    const MapPoint a = ring[i];
+    const MapPoint b = ring[(i + 1) % ring.size()];
+    twice += (a.east - 6e5) * (b.north - 5.8e6) - (b.east - 6e5) * (a.north - 5.8e6);
+  }
+  return twice / 2.0;
+}
+
 }  // namespace sunfall::test

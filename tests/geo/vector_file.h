@@ -6,6 +6,8 @@
 #include <string>
 #include <vector>
 
+#include "sunfall/grid.h"
+
 namespace sunfall::test {
 
 // A feature with numbers and a label; fields that it lacks stay empty.
@@ -22,5 +24,8 @@ void make_things(const std::filesystem::path& file, const std::vector<TestFeatur
 // In metres east and south of 600000, 5800000.
 std::string point(double east, double south);
 std::string rectangle(double west, double north, double east, double south);
+
+// Of a ring near there, closed or not; counter-clockwise above 0.
+double signed_area_m2(const std::vector<MapPoint>& ring);
 
 }  // namespace sunfall::test
