@@ -35,24 +35,12 @@ LevelGrid turned(const LevelGrid& grid) {
 
 }  // namespace
 
-Heading heading_of(GridAzimuth azimuth) {
-  const double east = sin(azimuth.from_grid_north), north = cos(azimuth.from_grid_north);
-  if (std::abs(north) >= std::abs(east)) return north > 0 ? Heading::north : Heading::south;
-  return east > 0 ? Heading::east : Heading::west;
-}
-
 HorizonSweep::HorizonSweep(const TerrainTile& tile, const SweepOptions& options)
     : tile_(tile), options_(options), turned_(tile.levels.size()), kernel_(best_sweep_kernel()) {}
 
-// v runs east for light from north and south, and south for light from east and west.
 HorizonSweep::Direction HorizonSweep::direction_of(GridAzimuth azimuth) const {
-  const double east = sin(azimuth.from_grid_north), north = cos(azimuth.from_grid_north);
-  Direction out{heading_of(azimuth)};
-  const double across = by_columns(out.heading) ? north : -east;
-  const double along = std::max(std::abs(east), std::abs(north));
-  out.lean = static_cast<float>(across / along);
-  out.row_length = static_cast<float>(1.0 / along);
-  return out;
+  const RowDirection rows = row_direction(azimuth);
+  return {rows.heading, static_cast<float>(rows.lean), static_cast<float>(rows.row_length)};
 }
 
 const LevelGrid& HorizonSweep::oriented(int level, bool columns) {
@@ -65,7 +53,7 @@ HorizonSweep::March& HorizonSweep::march(Heading heading) {
   March& m = marches_[static_cast<int>(heading)];
   if (m.ready) return m;
   m.columns = by_columns(heading);
-  m.reversed = heading == Heading::south || heading == Heading::east;
+  m.reversed = reversed(heading);
   const int tile_u = m.columns ? tile_.window.column : tile_.window.row;
   const int tile_rows = m.columns ? tile_.window.columns : tile_.window.rows;
   const int map_rows = m.columns ? tile_.map_columns : tile_.map_rows;

@@ -11,17 +11,12 @@
 #include <vector>
 
 #include "shade/horizon_kernel.h"
+#include "shade/row_direction.h"
 #include "shade/row_loops.h"
 #include "shade/terrain.h"
 #include "sunfall/angle.h"
 
 namespace sunfall {
-
-// The side that the light comes from, within 45 degrees.
-enum class Heading { north, east, south, west };
-Heading heading_of(GridAzimuth azimuth);
-// Light from east or west is swept column by column; its horizons are stored column by column too.
-inline bool by_columns(Heading heading) { return heading == Heading::east || heading == Heading::west; }
 
 struct SweepOptions {
   double cell_m = 1.0;

@@ -1,8 +1,7 @@
 #pragma once
 // What a metre of row does to light: leaf angles, density, clumping and scatter together.
 
-#include "shade/leaf_angles.h"
-#include "shade/leaf_scatter.h"
+#include "shade/leaf_depth.h"
 #include "sunfall/crop_rows.h"
 
 namespace sunfall {
@@ -11,24 +10,19 @@ class RowLeaves {
  public:
   // `leafing`: share of the full leaf, 0 to 1.
   RowLeaves(const CropRows& rows, double leafing)
-      : angles_(rows.leaf_angle),
-        scatter_(rows.absorptance),
-        density_(rows.leaf_density * leafing),
-        clumping_(rows.clumping) {}
+      : leaves_({rows.leaf_angle, rows.clumping, rows.absorptance}), density_(rows.leaf_density * leafing) {}
 
   // Optical depth of a metre of path, G Ω × density, as if leaves were black.
-  double black_depth(double sine) const { return angles_.projection(sine) * clumping_ * density_; }
+  double black_depth(double sine) const { return leaves_.black(sine) * density_; }
   // The same with the light that leaves scatter counted as travelling on.
-  double depth(double sine) const { return black_depth(sine) * scatter_.depth_factor(); }
+  double depth(double sine) const { return leaves_.scattering(sine) * density_; }
   // Of the light that does not pass, the part that returns to the sky.
-  double reflected(double sine) const { return scatter_.reflected(angles_.extinction(sine)); }
-  double projection(double sine) const { return angles_.projection(sine); }
+  double reflected(double sine) const { return leaves_.reflected(sine); }
+  double projection(double sine) const { return leaves_.projection(sine); }
 
  private:
-  LeafAngles angles_;
-  LeafScatter scatter_;
+  LeafDepth leaves_;
   double density_;
-  double clumping_;
 };
 
 }  // namespace sunfall
