@@ -108,6 +108,7 @@ struct CanopySweep::Block {
 
   template <int kSign>
   [[gnu::always_inline]] void pass_row(const Row& row, int dead) {
+    if (!row.counts) return;
     for (int i = 0; i < row.pieces; ++i) {
       const Piece& piece = row.piece[i];
       const int cell = line + piece.cell;
@@ -234,6 +235,13 @@ void CanopySweep::lay_rows(const CanopyJob& job, int before, int set) {
     row.dead = dead;
   }
   for (int i = before - 1; i >= 0; --i) rows_[static_cast<std::size_t>(i)].dead = dead;
+  // Near the map's axes and diagonals one set of lines serves many rows in a stretch, or all of them.
+  int next_read = std::numeric_limits<int>::max();
+  for (int i = before + job.rows - 1; i >= 0; --i) {
+    Row& row = rows_[static_cast<std::size_t>(i)];
+    row.counts = next_read <= i + before;
+    if (row.read && i >= before) next_read = i;
+  }
 }
 
 bool CanopySweep::run(const CanopyJob& job) {

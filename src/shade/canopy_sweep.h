@@ -63,6 +63,7 @@ class CanopySweep {
     int map_line = 0;
     int cell = 0;            // that line 0 stands in at the row's middle
     bool read = false;       // by the row's receivers
+    bool counts = false;     // some row that its leaves reach is read
     int bin = 0;             // c - z, in bins, rounded down
     float bin_fraction = 0;  // and what that took away, in bins
     int dead = 0;            // no receiver of this row or a later one reads a bin below
