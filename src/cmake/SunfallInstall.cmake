@@ -25,4 +25,9 @@ install(FILES
 if(TARGET sunfall_program)
   install(TARGETS sunfall_program RUNTIME DESTINATION "${CMAKE_INSTALL_BINDIR}" COMPONENT program)
 endif()
+# The table of covers serves the program and whoever links the library.
+foreach(component program development)
+  install(FILES fields/covers.toml DESTINATION "${CMAKE_INSTALL_DATADIR}/sunfall" COMPONENT ${component})
+  install(DIRECTORY fields/covers DESTINATION "${CMAKE_INSTALL_DATADIR}/sunfall" COMPONENT ${component})
+endforeach()
 install(FILES LICENSE README.md DESTINATION "${CMAKE_INSTALL_DOCDIR}" COMPONENT program)

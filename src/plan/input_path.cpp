@@ -67,8 +67,8 @@ fs::path input_path(const PlanFile& file, const std::string& written, const std:
   const fs::path resolved = file.folder() / written;
   const std::string fault = form_fault(written, resolved);
   if (!fault.empty()) {
-    throw Error(ErrorKind::plan,
-                {fault, where, in_quotes(written), "Name a file on disk, relative to the plan's folder"});
+    throw Error(ErrorKind::plan, {fault, where, in_quotes(written),
+                                  "Name a file on disk, relative to " + file.called + "'s folder"});
   }
   std::error_code error;
   const fs::file_status status = fs::status(resolved, error);
@@ -82,9 +82,10 @@ fs::path input_path(const PlanFile& file, const std::string& written, const std:
     throw Error(ErrorKind::data, {"the file does not exist", where, in_quotes(written), remedy});
   }
   if (!fs::is_regular_file(status)) {
-    throw Error(ErrorKind::data, {fs::is_directory(status) ? "a folder stands where a file is needed"
-                                                           : "a device or pipe stands where a file is needed",
-                                  where, in_quotes(written), "Name a file, relative to the plan's folder"});
+    throw Error(ErrorKind::data,
+                {fs::is_directory(status) ? "a folder stands where a file is needed"
+                                          : "a device or pipe stands where a file is needed",
+                 where, in_quotes(written), "Name a file, relative to " + file.called + "'s folder"});
   }
   return resolved;
 }

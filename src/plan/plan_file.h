@@ -1,5 +1,5 @@
 #pragma once
-// Which file a plan came from, and how messages say where in it something stands.
+// Which file a plan or another table came from, and how messages say where in it something stands.
 
 #include <filesystem>
 #include <string>
@@ -8,6 +8,8 @@ namespace sunfall {
 
 struct PlanFile {
   std::filesystem::path path;  // as given on the command line
+  std::string called = "the plan";
+  std::string page = "docs/plan.md";  // which tells how to write it
 
   // Where relative paths of the plan start; empty for the current folder.
   std::filesystem::path folder() const { return path.parent_path(); }

@@ -34,16 +34,17 @@ void refuse_what_is_no_file(const PlanFile& file) {
   if (!fs::exists(status)) {
     const fs::path with_ending = file.path.string() + ".toml";
     refuse(file, 0,
-           {"the plan does not exist", "", "",
+           {file.called + " does not exist", "", "",
             fs::exists(with_ending, error)
                 ? "Perhaps " + in_quotes(with_ending.filename().string()) + " is meant"
                 : similar_file_hint(file.path)});
   }
   if (fs::is_directory(status)) {
-    refuse(file, 0, {"the plan is a folder", "", "", "Give the .toml file inside it"});
+    refuse(file, 0, {file.called + " is a folder", "", "", "Give the .toml file inside it"});
   }
   if (!fs::is_regular_file(status)) {
-    refuse(file, 0, {"the plan is not a plain file", "", "a device or pipe", "Give a .toml file on disk"});
+    refuse(file, 0,
+           {file.called + " is not a plain file", "", "a device or pipe", "Give a .toml file on disk"});
   }
 }
 
@@ -74,7 +75,7 @@ void refuse_broken_utf8(std::string_view text, const PlanFile& file) {
     const std::size_t length = utf8_length(text, i);
     if (length == 0) {
       refuse(file, line_of(text, i),
-             {"the plan is not UTF-8 text", "",
+             {file.called + " is not UTF-8 text", "",
               fmt::format("byte 0x{:02X}", static_cast<unsigned char>(text[i])), "Save it as UTF-8"});
     }
     i += length;
@@ -100,10 +101,10 @@ void refuse_deep_nesting(std::string_view text, const PlanFile& file) {
     if ((letter == ']' || letter == '}') && brackets > 0) --brackets;
     if (brackets > kDeepestBrackets || dots > kMostDotsInLine) {
       refuse(file, line_of(text, i),
-             {"the plan is nested too deeply", "",
+             {file.called + " is nested too deeply", "",
               brackets > kDeepestBrackets ? fmt::format("more than {} brackets open", kDeepestBrackets)
                                           : fmt::format("more than {} dots in a line", kMostDotsInLine),
-              "Write tables as docs/plan.md shows them"});
+              "Write tables as " + file.page + " shows them"});
     }
     ++i;
   }
@@ -115,11 +116,13 @@ std::string read_plan_text(const PlanFile& file) {
   std::string text(kLargestPlan_bytes + 1, '\0');
   stream.read(text.data(), static_cast<std::streamsize>(text.size()));
   if (stream.bad() || (stream.fail() && !stream.eof())) {
-    throw Error(ErrorKind::io, {"the plan cannot be read", file.where(0, ""), "", "Check its permissions"});
+    throw Error(ErrorKind::io,
+                {file.called + " cannot be read", file.where(0, ""), "", "Check its permissions"});
   }
   text.resize(static_cast<std::size_t>(stream.gcount()));
   if (text.size() > kLargestPlan_bytes) {
-    refuse(file, 0, {"the plan is larger than 1 MB", "", "", "Give the plan, not one of its inputs"});
+    refuse(file, 0,
+           {file.called + " is larger than 1 MB", "", "", "Give " + file.called + ", not one of its inputs"});
   }
   refuse_broken_utf8(text, file);
   refuse_deep_nesting(text, file);

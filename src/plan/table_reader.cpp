@@ -95,7 +95,7 @@ const toml::node& TableReader::required(const std::string& key) {
   if (node == nullptr) {
     const auto note = std::find_if(shape_.keys.begin(), shape_.keys.end(),
                                    [&](const KeyNote& candidate) { return candidate.name == key; });
-    refuse(key, "missing; the plan must give it", "",
+    refuse(key, "missing; " + reading_.file.called + " must give it", "",
            fmt::format("Add it to [{}] (type: {})", shape_.name, note->type));
   }
   return *node;

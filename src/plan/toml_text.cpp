@@ -22,8 +22,8 @@ toml::table parse_toml(std::string_view text, const PlanFile& file) {
   } catch (const toml::parse_error& fault) {
     const toml::source_position at = fault.source().begin;
     const std::string where = fmt::format("{}:{}:{}", file.path.string(), at.line, at.column);
-    throw Error(ErrorKind::plan, {"the plan is not valid TOML", where, harmless(fault.description(), 200),
-                                  remedy_for(fault.description())});
+    throw Error(ErrorKind::plan, {file.called + " is not valid TOML", where,
+                                  harmless(fault.description(), 200), remedy_for(fault.description())});
   }
 }
 
