@@ -48,6 +48,7 @@ struct OpenYear {
   std::vector<double> beam;
   std::vector<double> sky;
   std::vector<int> days;
+  bool made = false;  // a made year: it does not stand for a year, and percentiles over such say nothing
 };
 std::vector<OpenYear> open_years(const LightSeries& series, const std::vector<Period>& periods);
 

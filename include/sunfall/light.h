@@ -39,6 +39,7 @@ struct LightSeries {
   SunTrack sun;                    // same steps
   std::vector<LightStep> steps;    // same length as sun.mean_sine
   std::string description;         // one line for people: "cloudless sky, Linke turbidity 3.0"
+  bool made_years = false;         // every year has the same months: nothing to be told over the years
   bool is_ceiling = false;         // a cloudless ceiling; labelled so everywhere
   std::vector<std::string> notes;  // assumptions that were made for the user
 };
@@ -67,7 +68,7 @@ struct MonthlyGlobalSource {
   int seed = 1;               // other seeds, other days
   double persistence = 0.29;  // how much a day is like the one before, 0 to 0.9
 };
-// A station's or a sensor's record in a CSV file, at equal steps of 1 minute to 1 hour or of one day.
+// A station's or a sensor's record in a CSV file, at equal steps of 1 minute to 12 hours or of one day.
 struct SeriesSource {
   // What of its interval a time stamp names; `day`: stamps are dates and name whole days of local
   // standard time.
@@ -98,7 +99,10 @@ struct SeriesSource {
   Unit unit = Unit::w_m2;
   char delimiter = '\0';  // '\0': found out
   char decimal = '.';     // or ','
-  bool utc = false;       // stamps without an offset are UTC, not the clock's standard time
+  // Columns of the station's place, decimal degrees, north and east positive; both or none.
+  std::string latitude;
+  std::string longitude;
+  bool utc = false;  // stamps without an offset are UTC, not the clock's standard time
   Split split = Split::logistic;
   DaySplit day_split = DaySplit::erbs;  // with Stamp::day
   bool allow_gaps = false;              // fill months of which more than a tenth is missing
@@ -124,12 +128,14 @@ struct GridSource {
   bool allow_gaps = false;
   bool trust_clock = false;
 };
-// Where the dates and values of a daily record stand in its CSV file.
+// Where the stamps and values of a record stand in its CSV file.
 struct DaysFile {
   std::filesystem::path file;
   std::string time = "date";  // the column of dates
   char delimiter = '\0';      // '\0': found out
   char decimal = '.';         // or ','
+  std::string latitude;       // as in SeriesSource
+  std::string longitude;
 };
 // Hours of bright sunshine of each day: Angstrom and Prescott, FAO-56 eq. 35.
 struct SunshineSource : DaysFile {

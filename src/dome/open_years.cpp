@@ -55,7 +55,10 @@ std::vector<OpenYear> open_years(const LightSeries& series, const std::vector<Pe
     add_day(years.back(), periods, date.month() / date.day(), sum_of_day(series, step, steps_per_day));
     day += std::chrono::days{1};
   }
-  for (OpenYear& year : years) take_means(year);
+  for (OpenYear& year : years) {
+    take_means(year);
+    year.made = series.made_years;
+  }
   return years;
 }
 

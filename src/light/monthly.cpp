@@ -161,9 +161,8 @@ void describe(const MonthlyGlobalSource& source, LightSeries& series) {
   series.notes.push_back(fmt::format(
       "the days are made, not measured: each month's follow the distribution of Bendt, Collares-Pereira and "
       "Rabl (1981) for its mean clearness, a day is like the one before by {:g}, seed {}; every month of "
-      "every year keeps the given mean, so that the years do not stand for good and bad ones, and "
-      "percentiles over them say nothing. Beam and sky of each "
-      "day by {}",
+      "every year keeps the given mean, so that the years do not stand for good and bad ones, and no "
+      "percentiles over them are told. Beam and sky of each day by {}",
       source.persistence, source.seed, name_of(source.split)));
 }
 
@@ -191,6 +190,7 @@ LightSeries make_series(const MonthlyGlobalSource& source, const LightRequest& r
   note_oddities(source.global_mj_m2_d, extraterrestrial, series);
   write_steps(varied ? varied_days(source, series) : mean_days(source, extraterrestrial, series), series);
   describe(source, series);
+  series.made_years = varied;
   add_photons(series);
   return series;
 }

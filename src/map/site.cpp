@@ -71,6 +71,7 @@ void check_years(const Plan& plan, Site& site) {
                  plan.periods[p].name, "Widen the range, or give light of a leap year"});
   }
   if (plan.output.percentiles) require_years(years, plan.periods, plan.output.percentiles_where);
+  if (site.series.made_years) return;
   const auto count = static_cast<int>(years.size());
   if (count > 1 && count < kLeastYears) {
     site.notes.push_back(

@@ -228,6 +228,13 @@ void require_years(const std::vector<OpenYear>& years, const std::vector<Period>
       "Give [light.series] a record of {} years or more, of which {} or more tell much better, or leave the "
       "key out",
       kLeastYears, kEnoughYears);
+  if (!years.empty() && years.front().made) {
+    throw Error(
+        ErrorKind::plan,
+        {"made years have no percentiles: every month keeps its mean in each of them", where,
+         fmt::format("{} made year{}", years.size(), years.size() == 1 ? "" : "s"),
+         fmt::format("Leave the key out, or give [light.series] a record of {} years or more", kLeastYears)});
+  }
   if (years.size() < kLeastYears) {
     throw Error(ErrorKind::plan,
                 {"there are too few years for percentiles over them", where,

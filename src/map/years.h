@@ -29,7 +29,11 @@ OpenField open_field(const DomeLight& light);
 // The same from the years alone, without a dome; equal to 1e-6.
 OpenField open_field(const std::vector<OpenYear>& years);
 
-inline bool has_percentiles(const OpenField& open) { return open.years.size() >= kLeastYears; }
+// Whether years are told apart: there are some, and they are not made.
+inline bool tells_years(const OpenField& open) { return open.years.size() > 1 && !open.years.front().made; }
+inline bool has_percentiles(const OpenField& open) {
+  return tells_years(open) && open.years.size() >= kLeastYears;
+}
 
 // Missing years (NaN) are left out; missing where fewer than kLeastYears are left.
 YearPercentiles percentiles_over_years(std::vector<double> by_year);
@@ -44,8 +48,8 @@ std::vector<YearPercentiles> percentiles_of(const OpenField& open);
 using TilePercentiles = std::array<std::vector<std::vector<float>>, 3>;
 TilePercentiles percentiles_of(const OpenField& open, const TileShares& shares);
 
-// Throws Error(plan) where a period lies in too few of the years for percentiles; `where` is the key that
-// asks for them.
+// Throws Error(plan) where years are made, and where a period lies in too few of them for percentiles;
+// `where` is the key that asks for them.
 void require_years(const std::vector<OpenYear>& years, const std::vector<Period>& periods,
                    const std::string& where);
 

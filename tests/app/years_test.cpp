@@ -118,6 +118,35 @@ TEST(YearsRun, TellsEachYearAndPercentilesOverThem) {
   }
 }
 
+// Every month of every made year has the plan's mean: percentiles over such years would say that no year is
+// bad.
+TEST(YearsRun, MadeYearsAreNotToldApart) {
+  const SmallFarm farm;
+  farm.write_plots();
+  const std::string made = kMonthlyLight + "days = 'varied'\nyears = 5\n" + kPlotsTable;
+  const std::string site = "[site]\nground = 'ground.tif'\nclock = 'Europe/Amsterdam'\n";
+  write_text(farm / "farm.toml", site + made + kPercentiles);
+  expect_all_refuse(farm, 2,
+                    {"made years have no percentiles", "farm.toml:11 output.percentiles", "5 made years",
+                     "Leave the key out, or give [light.series] a record of 3 years or more"});
+  write_text(farm / "farm.toml", site + made);
+  const Outcome outcome = farm.map();
+  ASSERT_EQ(outcome.status, 0) << outcome.err;
+  EXPECT_THAT(outcome.out, testing::Not(HasSubstr("over 5 years")));
+  const nlohmann::json summary = summary_of(farm);
+  EXPECT_FALSE(summary["open_field"].contains("over_years"));
+  EXPECT_FALSE(summary["open_field"].contains("years"));
+  EXPECT_FALSE(summary["plots"][0].contains("over_years"));
+  EXPECT_THAT(summary["notes"].dump(), HasSubstr("no percentiles over them are told"));
+  EXPECT_THAT(content_of(farm / "run" / "plots.csv"), testing::Not(HasSubstr("over years")));
+  EXPECT_FALSE(std::filesystem::exists(farm / "run" / "years.csv"));
+  const Outcome spot =
+      farm.run({"spot", "farm.toml", "--dome", "draft", "--at", "690021,5758979", "-o", "spot"});
+  ASSERT_EQ(spot.status, 0) << spot.err;
+  EXPECT_THAT(spot.out, testing::Not(HasSubstr("Over 5 years")));
+  EXPECT_FALSE(std::filesystem::exists(farm / "spot" / "years.csv"));
+}
+
 TEST(YearsRun, ASpotTellsTheSame) {
   const SmallFarm farm;
   write_years(farm, 3, "");
