@@ -6,14 +6,10 @@
 #include <string>
 #include <vector>
 
+#include "core/globe.h"
 #include "sunfall/sun.h"
 
 namespace sunfall {
-
-struct LonLat {
-  double longitude_deg = 0.0;
-  double latitude_deg = 0.0;
-};
 
 // A grid in coordinates of its own.
 struct PointGrid {
@@ -39,9 +35,5 @@ struct ChosenPoints {
 // an axis of one point the spacing is that of the other; a lone point stands for half a degree (the coarser
 // of the usual reanalyses; common practice, no source).
 ChosenPoints choose_points(const PointGrid& grid, double x, double y, const Place& place, bool bilinear);
-
-// "51.75° N, 5.75° E"
-std::string globe_text(LonLat point);
-double distance_km(LonLat a, LonLat b);
 
 }  // namespace sunfall

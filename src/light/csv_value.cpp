@@ -1,24 +1,13 @@
 #include "light/csv_value.h"
 
-#include <fmt/format.h>
-
 #include <algorithm>
 #include <charconv>
 #include <cmath>
-
-#include "sunfall/error.h"
+#include <string>
 
 namespace sunfall {
-namespace {
-
-// "one line was", "3 lines were".
-std::string lines_were(long count) {
-  return count == 1 ? "one line was" : fmt::format("{} lines were", count);
-}
-
-}  // namespace
-
 bool is_missing(std::string_view text) {
+  if (!text.empty() && text.front() >= '0' && text.front() <= '9') return false;
   for (const char* word : {"", "NaN", "nan", "NAN", "NA", "N/A", "null", "NULL", "None", "-", "--"}) {
     if (text == word) return true;
   }
@@ -49,21 +38,6 @@ std::optional<double> number_in(std::string_view text, char decimal) {
 const char* number_remedy(std::string_view text, char decimal) {
   const bool comma = decimal == '.' && text.find(',') != std::string_view::npos;
   return comma ? "give decimal = \",\" in the plan" : "leave a missing value empty, or write NaN or -9999";
-}
-
-void check_decimal(const CsvFile& csv, char decimal, const std::string& file) {
-  if (decimal != csv.delimiter()) return;
-  throw Error(ErrorKind::data, {.what = "the decimal mark and the delimiter are the same",
-                                .where = file,
-                                .found = shown_text(std::string(1, decimal)),
-                                .remedy = "save it with another delimiter"});
-}
-
-void note_lines_left_out(long below_header, long repeated, std::vector<std::string>& notes) {
-  if (below_header > 0) {
-    notes.push_back(lines_were(below_header) + " left out, below the header and without a time stamp");
-  }
-  if (repeated > 0) notes.push_back(lines_were(repeated) + " left out that repeated the one before");
 }
 
 }  // namespace sunfall

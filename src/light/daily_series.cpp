@@ -9,21 +9,13 @@
 #include "light/day_record.h"
 #include "light/flux_unit.h"
 #include "light/interval_sun.h"
-#include "light/quality.h"
 #include "light/series_steps.h"
+#include "light/unit_check.h"
 
 namespace sunfall {
 namespace {
 
 constexpr std::chrono::seconds kDay{86400};
-
-std::vector<std::string> columns_of(const SeriesSource& source) {
-  std::vector<std::string> columns;
-  for (const std::string& name : {source.global, source.diffuse, source.beam}) {
-    if (!name.empty()) columns.push_back(name);
-  }
-  return columns;
-}
 
 // The days as intervals from midnight to midnight of the series' standard time.
 Readings as_readings(const DayRecord& record, const SeriesSource& source, const LightSeries& series) {
@@ -37,22 +29,18 @@ Readings as_readings(const DayRecord& record, const SeriesSource& source, const 
                                series.utc_offset.count());
   }
   std::size_t column = 0;
-  const auto take = [&](std::size_t quantity, const std::string& name) {
-    if (name.empty()) return;
+  for (std::size_t q = 0; q < kQuantities; ++q) {
+    if (column_of(source, q).empty()) continue;
     const std::vector<double>& value = record.value[column++];
-    for (const double one : value) readings.value[quantity].push_back(static_cast<float>(one));
-  };
-  take(kGlobal, source.global);
-  take(kDiffuse, source.diffuse);
-  take(kBeam, source.beam);
+    readings.value[q].assign(value.begin(), value.end());
+  }
   return readings;
 }
 
 }  // namespace
 
 LightSeries make_daily_series(const SeriesSource& source, const LightRequest& request) {
-  const DaysFile file{source.file, source.time, source.delimiter, source.decimal};
-  const DayRecord record = read_days(file, columns_of(source));
+  const DayRecord record = read_days(table_of(source), value_columns(source), request.place);
   LightSeries series = open_years(record, request);
   Readings readings = as_readings(record, source, series);
   const std::vector<IntervalSun> suns = suns_of(readings, series);
@@ -77,7 +65,7 @@ LightSeries make_daily_series(const SeriesSource& source, const LightRequest& re
   series.description =
       fmt::format("record {} of daily {} ({}), {}", source.file.filename().string(),
                   photons ? "photons" : "radiation", quantities_text(readings), years_text(series));
-  fill_days(series, days, {source.day_split, photons, source.allow_gaps, source.file.string()});
+  fill_days(series, days, {source.day_split, photons, source.allow_gaps, source.file.string(), tally.note()});
   return series;
 }
 

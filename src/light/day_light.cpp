@@ -43,7 +43,7 @@ void fill_days(LightSeries& series, const std::vector<DayLight>& days, const Day
     series.notes.push_back(fmt::format("{} days of global radiation were split into beam and sky by {}",
                                        split, name_of(options.split)));
   }
-  fill_and_note(steps, options.allow_gaps, options.file, series);
+  fill_and_note(steps, options.allow_gaps, options.file, options.rejected, series);
   write_steps(steps, series);
   add_photons(series);
 }

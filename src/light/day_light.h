@@ -19,7 +19,8 @@ struct DayLightOptions {
   DaySplit split = DaySplit::erbs;
   bool photons = false;
   bool allow_gaps = false;
-  std::string file;  // for messages
+  std::string file;      // for messages
+  std::string rejected;  // what of the record counts as missing though it is there, in words
 };
 
 // Lays the days over the series' steps, splits those of which only the global is known, fills days that are

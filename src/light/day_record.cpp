@@ -3,42 +3,35 @@
 #include <fmt/format.h>
 
 #include <algorithm>
-#include <cmath>
-#include <limits>
 #include <map>
-#include <optional>
 
-#include "light/csv_file.h"
-#include "light/csv_value.h"
+#include "light/record_file.h"
 #include "light/time_stamp.h"
 #include "sunfall/error.h"
 
 namespace sunfall {
 namespace {
 
-constexpr double kNone = std::numeric_limits<double>::quiet_NaN();
 constexpr long kMostGaps = 10;  // the record's length is at most so many times its days
 
 class DaysReader {
  public:
-  DaysReader(const DaysFile& file, const std::vector<std::string>& columns)
-      : decimal_(file.decimal), csv_(file.file, {file.delimiter, all_columns(file, columns)}) {
-    check_decimal(csv_, file.decimal, file.file.string());
+  DaysReader(const DaysFile& file, const std::vector<std::string>& columns) : file_(file, columns) {
     record_.file = file.file.string();
     record_.value.resize(columns.size());
   }
 
   DayRecord read() {
-    long below_header = 0;
-    while (csv_.next()) {
-      const std::string_view stamp = csv_.field(0);
+    while (file_.next()) {
+      const std::string_view stamp = file_.stamp();
       if (const auto date = parse_date(stamp)) {
         add(*date);
       } else if (parse_time_stamp(stamp)) {
-        refuse("the stamp of a day must be its date alone, by the place's standard time", shown_text(stamp),
-               "write 2025-06-01; a record of hours or minutes wants stamp = \"begin\" or \"end\"");
-      } else if (record_.size() > 0 || ++below_header > kMostLinesBelowHeader) {
-        refuse("the date cannot be read", shown_text(stamp), "write ISO 8601, 2025-06-01");
+        file_.refuse("the stamp of a day must be its date alone, by the place's standard time",
+                     shown_text(stamp),
+                     "write 2025-06-01; a record of hours or minutes wants stamp = \"begin\" or \"end\"");
+      } else if (!file_.may_leave_out()) {
+        file_.refuse("the date cannot be read", shown_text(stamp), "write ISO 8601, 2025-06-01");
       }
     }
     if (record_.size() < 2) {
@@ -48,54 +41,26 @@ class DaysReader {
                                     .remedy = "write ISO 8601, 2025-06-01, in the column of dates"});
     }
     check_step();
-    note_lines_left_out(below_header, repeated_, record_.notes);
+    record_.station = file_.station();
+    file_.note_left_out(record_.notes);
     return std::move(record_);
   }
 
  private:
-  static std::vector<std::string> all_columns(const DaysFile& file, const std::vector<std::string>& columns) {
-    std::vector<std::string> all{file.time};
-    all.insert(all.end(), columns.begin(), columns.end());
-    return all;
-  }
-
-  [[noreturn]] void refuse(const std::string& what, const std::string& found,
-                           const std::string& remedy) const {
-    throw Error(ErrorKind::data, {what, csv_.where(), found, remedy});
-  }
-
-  double number(std::string_view text) const {
-    if (is_missing(text)) return kNone;
-    const std::optional<double> value = number_in(text, decimal_);
-    if (!value) refuse("a value is not a number", shown_text(text), number_remedy(text, decimal_));
-    return is_missing(*value) ? kNone : *value;
-  }
-
   void add(std::chrono::sys_days date) {
-    const std::size_t columns = record_.value.size();
-    std::vector<double> value(columns);
-    for (std::size_t c = 0; c < columns; ++c) value[c] = number(csv_.field(c + 1));
+    const std::vector<double>& value = file_.values();
     if (record_.size() > 0 && date < record_.date.back()) {
-      refuse("the dates go backward", shown_text(csv_.field(0)),
-             "sort the lines by date; is the order of day and month the same everywhere?");
+      file_.refuse("the dates go backward", shown_text(file_.stamp()),
+                   "sort the lines by date; is the order of day and month the same everywhere?");
     }
     if (record_.size() > 0 && date == record_.date.back()) {
-      check_repeated(value);
-      ++repeated_;
+      file_.leave_out_repeated("day");
       return;
     }
+    file_.keep();
     record_.date.push_back(date);
-    record_.line.push_back(static_cast<std::int32_t>(csv_.line()));
-    for (std::size_t c = 0; c < columns; ++c) record_.value[c].push_back(value[c]);
-  }
-
-  void check_repeated(const std::vector<double>& value) const {
-    for (std::size_t c = 0; c < value.size(); ++c) {
-      const double before = record_.value[c].back();
-      if (before == value[c] || (std::isnan(before) && std::isnan(value[c]))) continue;
-      refuse("the same day comes twice with different values", shown_text(csv_.field(0)),
-             "keep one of the lines");
-    }
+    record_.line.push_back(static_cast<std::int32_t>(file_.line()));
+    for (std::size_t c = 0; c < value.size(); ++c) record_.value[c].push_back(value[c]);
   }
 
   void check_step() const {
@@ -116,18 +81,18 @@ class DaysReader {
          .remedy = "give one line a day; monthly means belong in monthly_global. Is a year mistyped?"});
   }
 
-  char decimal_;
-  CsvFile csv_;
+  RecordFile file_;
   DayRecord record_;
-  long repeated_ = 0;
 };
 
 }  // namespace
 
 std::string DayRecord::where(std::size_t i) const { return fmt::format("{}:{}", file, line[i]); }
 
-DayRecord read_days(const DaysFile& file, const std::vector<std::string>& columns) {
-  return DaysReader(file, columns).read();
+DayRecord read_days(const DaysFile& file, const std::vector<std::string>& columns, const Place& place) {
+  DayRecord record = DaysReader(file, columns).read();
+  check_station(record.station, file, place, record.notes);
+  return record;
 }
 
 LightSeries open_years(const DayRecord& record, const LightRequest& request) {

@@ -3,9 +3,11 @@
 
 #include <chrono>
 #include <cstdint>
+#include <optional>
 #include <string>
 #include <vector>
 
+#include "core/globe.h"
 #include "light/open_series.h"
 #include "sunfall/light.h"
 
@@ -16,6 +18,7 @@ struct DayRecord {
   std::vector<std::chrono::sys_days> date;  // increasing
   std::vector<std::int32_t> line;           // of the file
   std::vector<std::vector<double>> value;   // one a column, NaN where missing
+  std::optional<LonLat> station;            // where the file says that it stands
   std::vector<std::string> notes;
 
   std::size_t size() const { return date.size(); }
@@ -23,8 +26,8 @@ struct DayRecord {
 };
 
 // Throws Error(data) for dates that cannot be read, come twice with other values, go backward or are not
-// those of days in a row (with gaps), and for values that are no numbers.
-DayRecord read_days(const DaysFile& file, const std::vector<std::string>& columns);
+// those of days in a row (with gaps), for a station far from `place`, and for values that are no numbers.
+DayRecord read_days(const DaysFile& file, const std::vector<std::string>& columns, const Place& place);
 
 // An empty series of all years that the record touches.
 LightSeries open_years(const DayRecord& record, const LightRequest& request);

@@ -104,7 +104,8 @@ std::string gaps_text(const std::vector<MonthGaps>& months) {
   return text;
 }
 
-void check_gaps(const std::vector<MonthGaps>& months, bool allowed, const std::string& where) {
+void check_gaps(const std::vector<MonthGaps>& months, bool allowed, const std::string& where,
+                const std::string& rejected) {
   std::vector<MonthGaps> too_many;
   for (const MonthGaps& gaps : months) {
     if (gaps.part() > kMostMissing) too_many.push_back(gaps);
@@ -114,12 +115,13 @@ void check_gaps(const std::vector<MonthGaps>& months, bool allowed, const std::s
   const std::string rest =
       too_many.size() > kMostNamed ? fmt::format(" and {} more months", too_many.size() - kMostNamed) : "";
   too_many.resize(std::min(too_many.size(), kMostNamed));
-  throw Error(ErrorKind::data,
-              {.what = "more than 10 % of a month's daylight is missing",
-               .where = where,
-               .found = gaps_text(too_many) + rest,
-               .remedy = "cut the file to whole years, or give allow_gaps = true to fill them from the days "
-                         "around and from other years"});
+  throw Error(
+      ErrorKind::data,
+      {.what = "more than 10 % of a month's daylight is missing",
+       .where = where,
+       .found = gaps_text(too_many) + rest + (rejected.empty() ? "" : "; " + rejected),
+       .remedy = "mend the record or cut the file to whole years, or give allow_gaps = true to fill them "
+                 "from the days around and from other years"});
 }
 
 namespace {
@@ -172,9 +174,10 @@ bool fill_gaps(StepLight& steps, const LightSeries& series) {
   return all;
 }
 
-void fill_and_note(StepLight& steps, bool allow_gaps, const std::string& file, LightSeries& series) {
+void fill_and_note(StepLight& steps, bool allow_gaps, const std::string& file, const std::string& rejected,
+                   LightSeries& series) {
   const std::vector<MonthGaps> months = count_gaps(steps, series);
-  check_gaps(months, allow_gaps, file);
+  check_gaps(months, allow_gaps, file, rejected);
   const std::string text = gaps_text(months);
   if (text.empty()) return;
   if (!fill_gaps(steps, series)) {

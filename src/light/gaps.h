@@ -17,8 +17,10 @@ struct MonthGaps {
 };
 std::vector<MonthGaps> count_gaps(const StepLight& steps, const LightSeries& series);
 
-// Throws Error(data) for months of which more than a tenth is missing, unless they are allowed.
-void check_gaps(const std::vector<MonthGaps>& months, bool allowed, const std::string& where);
+// Throws Error(data) for months of which more than a tenth is missing, unless they are allowed. `rejected`
+// says which readings count as missing though they are there, empty where none does.
+void check_gaps(const std::vector<MonthGaps>& months, bool allowed, const std::string& where,
+                const std::string& rejected = "");
 
 // Every unknown step gets the mean clearness, of beam and of sky, of the same time on the nearest days that
 // know it, at most three before and three after within 15 days, else of the same season in other years,
@@ -26,7 +28,8 @@ void check_gaps(const std::vector<MonthGaps>& months, bool allowed, const std::s
 bool fill_gaps(StepLight& steps, const LightSeries& series);
 
 // Counts, checks and fills; notes in the series what was filled.
-void fill_and_note(StepLight& steps, bool allow_gaps, const std::string& file, LightSeries& series);
+void fill_and_note(StepLight& steps, bool allow_gaps, const std::string& file, const std::string& rejected,
+                   LightSeries& series);
 
 // "2019: January 3.2 %, May 0.1 %"; empty without a gap.
 std::string gaps_text(const std::vector<MonthGaps>& months);

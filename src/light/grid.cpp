@@ -18,10 +18,6 @@ using Accumulated = GridSource::Accumulated;
 
 constexpr float kBeamOverGlobal = 0.08F;  // the closure of Long and Shi (2008) for a high sun
 
-const std::string& name_of(const GridSource& source, std::size_t quantity) {
-  return quantity == kGlobal ? source.global : quantity == kDiffuse ? source.diffuse : source.beam;
-}
-
 bool is_energy(Unit unit) { return unit != Unit::w_m2 && unit != Unit::umol_m2_s; }
 
 class GridReadings {
@@ -57,14 +53,11 @@ class GridReadings {
     readings_.step = record_step(record_.time_s, readings_.file, [&](std::size_t i) {
       return fmt::format("{} time number {}", readings_.file, i + 1);
     });
-    const std::int64_t step_s = readings_.step.count();
-    const std::int64_t back_s = source_.stamp == SeriesSource::Stamp::begin    ? 0
-                                : source_.stamp == SeriesSource::Stamp::middle ? step_s / 2
-                                                                               : step_s;
+    const std::int64_t back_s = begin_before_stamp_s(source_.stamp, readings_.step);
     for (const std::int64_t time_s : record_.time_s) readings_.begin_s.push_back(time_s - back_s);
     long resets = 0;
     for (std::size_t q = 0; q < kQuantities; ++q) {
-      if (name_of(source_, q).empty()) continue;
+      if (column_of(source_, q).empty()) continue;
       std::vector<double>& value = record_.quantities[q].value;
       if (is_energy(unit)) check_sums(value, q);
       if (source_.accumulated == Accumulated::start) {
@@ -110,7 +103,7 @@ class GridReadings {
   Unit unit() {
     std::optional<Unit> unit = source_.unit;
     for (std::size_t q = 0; q < kQuantities; ++q) {
-      const std::string& name = name_of(source_, q);
+      const std::string& name = column_of(source_, q);
       if (name.empty()) continue;
       const std::string& text = record_.quantities[q].unit;
       const auto known = unit_of_text(text);
@@ -151,7 +144,7 @@ class GridReadings {
     if (start == look_accumulated(value) || (start && !record_.run_s.empty())) return;
     refuse(start ? "the values are not sums since a forecast's start"
                  : "the values grow from step to step, as sums since a forecast's start do",
-           name_of(source_, quantity),
+           column_of(source_, quantity),
            start ? "remove accumulated = \"start\"" : "give accumulated = \"start\"");
   }
 

@@ -6,9 +6,7 @@
 #include <cmath>
 #include <limits>
 
-#include "light/flux_unit.h"
 #include "light/radiation_limits.h"
-#include "sunfall/error.h"
 
 namespace sunfall {
 namespace {
@@ -70,6 +68,7 @@ void judge_one(Readings& readings, std::size_t i, const IntervalSun& sun, double
 // minutes; the edge of a cloud moves minutes farther.
 constexpr double kMostStep[kQuantities] = {0.75, 0.35, 0.65};  // global, diffuse, beam
 constexpr std::int64_t kStepFrom_s = 600;
+constexpr std::int64_t kStepTo_s = 3600;  // over longer ones the sun itself moves far
 constexpr double kStepSine = 0.0349;
 
 // A step alone does not tell which of two readings is wrong. One that lies beyond it from both neighbours, to
@@ -96,7 +95,7 @@ bool is_spike(const Readings& readings, const std::vector<IntervalSun>& suns, st
 }
 
 long reject_spikes(Readings& readings, const std::vector<IntervalSun>& suns, double watts) {
-  if (readings.step.count() < kStepFrom_s) return 0;
+  if (readings.step.count() < kStepFrom_s || readings.step.count() > kStepTo_s) return 0;
   std::vector<std::size_t> spikes;
   for (std::size_t i = 1; i + 1 < readings.size(); ++i) {
     if (is_spike(readings, suns, i, watts)) spikes.push_back(i);
@@ -165,55 +164,6 @@ std::string QualityTally::notes() const {
   if (rare > 0) all += fmt::format("; {} extremely rare ones were kept", rare);
   return all + " (limits after Long and Shi 2008" +
          (spikes > 0 ? ", steps after Journée and Bertrand 2011)" : ")");
-}
-
-namespace {
-
-// A cloudless hour's clearness, and how far the clearest two hours in a hundred may lie from it in any
-// climate before the unit must be another.
-constexpr double kClear = 0.75;
-constexpr double kLeastBright = 0.35;
-constexpr double kOddlyDark = 0.5;
-constexpr double kMostBright = 1.10;
-constexpr double kHighSun_w_m2 = 350.0;  // above the air on the level: some 15 degrees high
-constexpr std::size_t kLeastReadings = 50;
-
-}  // namespace
-
-std::string check_unit(const Readings& readings, const std::vector<IntervalSun>& suns,
-                       SeriesSource::Unit unit) {
-  const double watts = rough_w_per_unit(unit, readings.step);
-  std::vector<double> clearness;
-  for (std::size_t i = 0; i < readings.size(); ++i) {
-    if (suns[i].level_w < kHighSun_w_m2) continue;
-    double global_w = value_w(readings, kGlobal, i, watts);
-    if (std::isnan(global_w)) {
-      global_w =
-          value_w(readings, kDiffuse, i, watts) + value_w(readings, kBeam, i, watts) * suns[i].beam_sine;
-    }
-    if (!std::isnan(global_w)) clearness.push_back(global_w / suns[i].level_w);
-  }
-  if (clearness.size() < kLeastReadings) return "";
-  const auto bright = clearness.begin() + static_cast<std::ptrdiff_t>(clearness.size() * 98 / 100);
-  std::nth_element(clearness.begin(), bright, clearness.end());
-  if (*bright >= kLeastBright && *bright <= kMostBright) {
-    if (*bright >= kOddlyDark) return "";
-    return fmt::format(
-        "the clearest hours have only {:.0f} % of a cloudless sky's light: is the sensor shaded, dirty "
-        "or under a cover?",
-        100.0 * *bright / kClear);
-  }
-  const std::string real = unit_of_values(*bright / kClear, unit, readings.step);
-  throw Error(ErrorKind::data,
-              {.what = fmt::format("the values do not fit the unit {}", unit_name(unit)),
-               .where = readings.file,
-               .found = fmt::format("its clearest hours have {:.3g} times the light of a cloudless sky",
-                                    *bright / kClear),
-               .remedy = real.empty() ? "name the unit of the file; see the plan's page for those known"
-                         : real.ends_with("lux")
-                             ? "the values look like " + real +
-                                   ": a lux meter weighs light as eyes do; measure radiation or photons"
-                             : "the values look like " + real});
 }
 
 }  // namespace sunfall

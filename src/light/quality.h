@@ -18,15 +18,11 @@ struct QualityTally {
   long stuck = 0;       // the same value for hours by day
   long dark = 0;        // no light for hours by day
   long judged = 0;      // readings by day
+  long rejected() const { return impossible + open + spikes + stuck + dark; }
   std::string notes() const;
 };
 
 // Sets readings that fail to NaN, in all quantities. `watts` is W m-2 of one of the file's unit.
 QualityTally judge(Readings& readings, const std::vector<IntervalSun>& suns, double watts);
-
-// Throws Error(data) where the values as a whole do not fit the unit, naming the one that they fit. A note
-// where they are oddly low; else nothing.
-std::string check_unit(const Readings& readings, const std::vector<IntervalSun>& suns,
-                       SeriesSource::Unit unit);
 
 }  // namespace sunfall

@@ -2,43 +2,36 @@
 
 #include <fmt/format.h>
 
-#include <algorithm>
-#include <cmath>
-#include <limits>
 #include <map>
 #include <optional>
 
-#include "light/csv_file.h"
-#include "light/csv_value.h"
+#include "light/record_file.h"
+#include "light/record_step.h"
 #include "light/time_stamp.h"
 #include "sunfall/error.h"
 
 namespace sunfall {
 namespace {
 
-constexpr float kNone = std::numeric_limits<float>::quiet_NaN();
 constexpr std::int64_t kHour_s = 3600;
-constexpr double kLargest = 1e9;        // J m-2 of an hour are below 1e7
-constexpr std::int64_t kMostGaps = 10;  // the record's length is at most so many times its readings
 
 class ReadingsReader {
  public:
   ReadingsReader(const SeriesSource& source, const Clock& clock)
-      : source_(source), clock_(clock), csv_(source.file, {source.delimiter, columns(source)}) {
-    check_decimal(csv_, source.decimal, source.file.string());
+      : source_(source), clock_(clock), file_(table_of(source), value_columns(source)) {
     readings_.file = source.file.string();
   }
 
   Readings read() {
-    long below_header = 0;
-    while (csv_.next()) {
-      const std::optional<TimeStamp> stamp = parse_time_stamp(csv_.field(0));
+    while (file_.next()) {
+      const std::optional<TimeStamp> stamp = parse_time_stamp(file_.stamp());
       if (stamp) {
         add(*stamp);
-      } else if (readings_.size() > 0 || ++below_header > kMostLinesBelowHeader) {
-        refuse("the time stamp cannot be read", shown_text(csv_.field(0)),
-               "write ISO 8601, 2025-06-01T12:00 or 2025-06-01T12:00+01:00; dates alone are the stamps of a "
-               "daily record, stamp = \"day\"");
+      } else if (!file_.may_leave_out()) {
+        file_.refuse(
+            "the time stamp cannot be read", shown_text(file_.stamp()),
+            "write ISO 8601, 2025-06-01T12:00 or 2025-06-01T12:00+01:00; dates alone are the stamps of a "
+            "daily record, stamp = \"day\"");
       }
     }
     if (readings_.size() < 2) {
@@ -50,31 +43,18 @@ class ReadingsReader {
            .remedy = "write ISO 8601, 2025-06-01T12:00, in the column of time stamps; dates alone are "
                      "the stamps of a daily record, stamp = \"day\""});
     }
-    finish(below_header);
+    finish();
     return std::move(readings_);
   }
 
  private:
-  static std::vector<std::string> columns(const SeriesSource& source) {
-    std::vector<std::string> names{source.time};
-    for (const std::string& name : {source.global, source.diffuse, source.beam}) {
-      if (!name.empty()) names.push_back(name);
-    }
-    return names;
-  }
-
-  [[noreturn]] void refuse(const std::string& what, const std::string& found,
-                           const std::string& remedy) const {
-    throw Error(ErrorKind::data, {what, csv_.where(), found, remedy});
-  }
-  [[noreturn]] void refuse_line(std::size_t i, const std::string& what, const std::string& found,
-                                const std::string& remedy) const {
-    throw Error(ErrorKind::data,
-                {what, fmt::format("{}:{}", readings_.file, readings_.line[i]), found, remedy});
-  }
   [[noreturn]] void refuse_daylight_saving(const std::string& where, const std::string& found) const {
     throw Error(ErrorKind::data, {"the time stamps follow daylight saving time", where, found,
                                   "write standard time all year, or UTC, or each stamp with its offset"});
+  }
+
+  std::string line_text(std::size_t i) const {
+    return fmt::format("{}:{}", readings_.file, readings_.line[i]);
   }
 
   std::int64_t utc_s(const TimeStamp& stamp) {
@@ -97,122 +77,77 @@ class ReadingsReader {
 
   void add(const TimeStamp& stamp) {
     const std::int64_t time_s = utc_s(stamp);
-    std::array<float, kQuantities> value{kNone, kNone, kNone};
-    std::size_t column = 1;
-    for (std::size_t q = 0; q < kQuantities; ++q) {
-      if (is_column(q)) value[q] = number(csv_.field(column++));
-    }
+    const std::vector<double>& value = file_.values();
     if (readings_.size() > 0 && time_s <= readings_.begin_s.back()) {
       check_step_back(stamp, time_s);
-      for (std::size_t q = 0; q < kQuantities; ++q) {
-        const float before = is_column(q) ? readings_.value[q].back() : kNone;
-        if (before == value[q] || (std::isnan(before) && std::isnan(value[q]))) continue;
-        refuse("the same time comes twice with different values", shown_text(csv_.field(0)),
-               "keep one of the lines");
-      }
-      ++repeated_;
+      file_.leave_out_repeated("time");
       return;
     }
+    file_.keep();
     wall_ = wall_ || !(stamp.has_offset || source_.utc);
     readings_.begin_s.push_back(time_s);
-    readings_.line.push_back(static_cast<std::int32_t>(csv_.line()));
+    readings_.line.push_back(static_cast<std::int32_t>(file_.line()));
+    std::size_t column = 0;
     for (std::size_t q = 0; q < kQuantities; ++q) {
-      if (is_column(q)) readings_.value[q].push_back(value[q]);
+      if (!column_of(source_, q).empty()) readings_.value[q].push_back(static_cast<float>(value[column++]));
     }
-  }
-
-  bool is_column(std::size_t quantity) const {
-    return !(quantity == kGlobal    ? source_.global
-             : quantity == kDiffuse ? source_.diffuse
-                                    : source_.beam)
-                .empty();
-  }
-
-  float number(std::string_view text) {
-    if (is_missing(text)) return kNone;
-    const std::optional<double> found = number_in(text, source_.decimal);
-    if (!found) {
-      refuse("a value is not a number", shown_text(text), number_remedy(text, source_.decimal));
-    }
-    const double value = *found;
-    if (is_missing(value)) return kNone;
-    if (std::abs(value) > kLargest) refuse("a value is beyond any unit", shown_text(text), "");
-    return static_cast<float>(value);
   }
 
   void check_step_back(const TimeStamp& stamp, std::int64_t time_s) const {
     const std::int64_t back_s = readings_.begin_s.back() - time_s;
     if (!stamp.has_offset && !source_.utc && back_s <= kHour_s &&
         change_of_clock_s(time_s, readings_.begin_s.back()) < 0) {
-      refuse_daylight_saving(csv_.where(), shown_text(csv_.field(0)) + ", where the clock is set back");
+      refuse_daylight_saving(file_.where(), shown_text(file_.stamp()) + ", where the clock is set back");
     }
     if (back_s > 0) {
-      refuse("the time stamps go backward", shown_text(csv_.field(0)),
-             "sort the lines by time; is the order of day and month the same everywhere?");
+      file_.refuse("the time stamps go backward", shown_text(file_.stamp()),
+                   "sort the lines by time; is the order of day and month the same everywhere?");
     }
   }
 
-  // The most common distance, and every other one a multiple of it.
-  void find_step() {
-    std::map<std::int64_t, std::size_t> count;
-    for (std::size_t i = 1; i < readings_.size(); ++i) {
-      ++count[readings_.begin_s[i] - readings_.begin_s[i - 1]];
-    }
-    const auto most = std::max_element(count.begin(), count.end(),
-                                       [](const auto& a, const auto& b) { return a.second < b.second; });
-    const std::int64_t step_s = most->first;
-    if (step_s < 60 || step_s > kHour_s || step_s % 60 != 0) {
-      throw Error(ErrorKind::data,
-                  {.what = "the record's step must be whole minutes, from 1 to 60",
-                   .where = readings_.file,
-                   .found = fmt::format("{} seconds between most lines", step_s),
-                   .remedy = step_s == 86400 ? "is it a daily record? Then give stamp = \"day\""
-                                             : "average it to 10 minutes or an hour"});
-    }
-    for (std::size_t i = 1; i < readings_.size(); ++i) {
-      const std::int64_t gap_s = readings_.begin_s[i] - readings_.begin_s[i - 1];
-      if (gap_s % step_s != 0) {
-        refuse_line(i, "the time stamps are not equally spaced",
-                    fmt::format("{} seconds after the line before, {} elsewhere", gap_s, step_s),
-                    "bring the record to one step");
-      }
-      if (wall_ && gap_s == step_s + kHour_s &&
-          change_of_clock_s(readings_.begin_s[i - 1], readings_.begin_s[i]) > 0) {
-        refuse_daylight_saving(fmt::format("{}:{}", readings_.file, readings_.line[i]),
-                               "an hour is left out where the clock is set forward");
-      }
-    }
-    const std::int64_t length_s = readings_.begin_s.back() - readings_.begin_s.front();
-    if (length_s / step_s > kMostGaps * static_cast<std::int64_t>(readings_.size())) {
-      throw Error(ErrorKind::data,
-                  {.what = "the record is almost all gaps",
-                   .where = readings_.file,
-                   .found = fmt::format("{} readings in {} days", readings_.size(), length_s / 86400),
-                   .remedy = "is a year mistyped in one of the stamps?"});
-    }
-    readings_.step = std::chrono::seconds{step_s};
-  }
-
-  void finish(long below_header) {
-    find_step();
+  // An hour that is left out just where the clock is set forward tells what it is set to.
+  void check_set_forward() const {
     const std::int64_t step_s = readings_.step.count();
-    const std::int64_t back_s = source_.stamp == SeriesSource::Stamp::begin    ? 0
-                                : source_.stamp == SeriesSource::Stamp::middle ? step_s / 2
-                                                                               : step_s;
+    for (std::size_t i = 1; wall_ && i < readings_.size(); ++i) {
+      const std::int64_t gap_s = readings_.begin_s[i] - readings_.begin_s[i - 1];
+      if (gap_s == step_s + kHour_s &&
+          change_of_clock_s(readings_.begin_s[i - 1], readings_.begin_s[i]) > 0) {
+        refuse_daylight_saving(line_text(i), "an hour is left out where the clock is set forward");
+      }
+    }
+  }
+
+  void finish() {
+    readings_.step =
+        record_step(readings_.begin_s, readings_.file, [&](std::size_t i) { return line_text(i); });
+    check_set_forward();
+    const std::int64_t back_s = begin_before_stamp_s(source_.stamp, readings_.step);
     for (std::int64_t& begin_s : readings_.begin_s) begin_s -= back_s;
-    note_lines_left_out(below_header, repeated_, readings_.notes);
+    readings_.station = file_.station();
+    file_.note_left_out(readings_.notes);
   }
 
   const SeriesSource& source_;
   const Clock& clock_;
-  CsvFile csv_;
+  RecordFile file_;
   Readings readings_;
   std::map<int, std::int64_t> offsets_s_;
-  long repeated_ = 0;
   bool wall_ = false;  // some stamps are the clock's own
 };
 
 }  // namespace
+
+std::vector<std::string> value_columns(const SeriesSource& source) {
+  std::vector<std::string> names;
+  for (std::size_t q = 0; q < kQuantities; ++q) {
+    if (!column_of(source, q).empty()) names.push_back(column_of(source, q));
+  }
+  return names;
+}
+
+DaysFile table_of(const SeriesSource& source) {
+  return {source.file, source.time, source.delimiter, source.decimal, source.latitude, source.longitude};
+}
 
 std::string quantities_text(const Readings& readings) {
   std::string text;

@@ -4,9 +4,11 @@
 #include <array>
 #include <chrono>
 #include <cstdint>
+#include <optional>
 #include <string>
 #include <vector>
 
+#include "core/globe.h"
 #include "sunfall/light.h"
 #include "sunfall/time.h"
 
@@ -22,11 +24,21 @@ struct Readings {
   bool zone_known = false;            // the file itself says how its times stand to UTC
   // In the file's unit, NaN where missing; without elements where the file has no such column.
   std::array<std::vector<float>, kQuantities> value;
+  std::optional<LonLat> station;  // where the file says that it stands
   std::vector<std::string> notes;
 
   std::size_t size() const { return begin_s.size(); }
   bool has(std::size_t quantity) const { return !value[quantity].empty(); }
 };
+
+// The name of a quantity's column, empty where it is not there; of all that are there, in order; and the
+// table that they stand in.
+template <typename Source>
+const std::string& column_of(const Source& source, std::size_t quantity) {
+  return quantity == kGlobal ? source.global : quantity == kDiffuse ? source.diffuse : source.beam;
+}
+std::vector<std::string> value_columns(const SeriesSource& source);
+DaysFile table_of(const SeriesSource& source);
 
 // "global, diffuse".
 std::string quantities_text(const Readings& readings);

@@ -11,14 +11,18 @@
 #include "light/gaps.h"
 #include "light/quality.h"
 #include "light/quantum.h"
+#include "light/record_file.h"
+#include "light/record_step.h"
 #include "light/series_steps.h"
 #include "light/split_hours.h"
+#include "light/unit_check.h"
 #include "sunfall/error.h"
 
 namespace sunfall {
 namespace {
 
 constexpr std::int64_t kDay_s = 86400;
+constexpr std::chrono::seconds kHour{3600};
 // Twilight stays below, and a fault of some nights is no reason to refuse a year.
 constexpr double kMostAtNight_w_m2 = 20.0;
 constexpr double kMostLitNights = 0.05;
@@ -63,9 +67,9 @@ void check_night(const Readings& readings, const std::vector<IntervalSun>& suns,
 }
 
 std::string describe(const Readings& readings, const SeriesSource& source, const LightSeries& series) {
-  return fmt::format("record {} of {} ({}) every {} minutes, {}", source.file.filename().string(),
+  return fmt::format("record {} of {} ({}) every {}, {}", source.file.filename().string(),
                      is_quantum(source.unit) ? "photons" : "radiation", quantities_text(readings),
-                     readings.step.count() / 60, years_text(series));
+                     step_text(readings.step), years_text(series));
 }
 
 void split_and_note(StepLight& steps, const Readings& readings, const SeriesSource& source,
@@ -109,7 +113,9 @@ LightSeries make_series(const SeriesSource& source, const LightRequest& request)
   check_columns(source, request.where);
   check_stamp(source, request.where);
   if (source.stamp == SeriesSource::Stamp::day) return make_daily_series(source, request);
-  return series_of(read_readings(source, request.clock), source, request);
+  Readings readings = read_readings(source, request.clock);
+  check_station(readings.station, table_of(source), request.place, readings.notes);
+  return series_of(std::move(readings), source, request);
 }
 
 LightSeries series_of(Readings readings, const SeriesSource& source, const LightRequest& request) {
@@ -128,10 +134,16 @@ LightSeries series_of(Readings readings, const SeriesSource& source, const Light
   for (const std::string& note : {clock_note, unit_note, tally.notes()}) {
     if (!note.empty()) series.notes.push_back(note);
   }
+  if (readings.step > kHour) {
+    series.notes.push_back(fmt::format(
+        "steps of {} hide when within them the sun shone: each is taken as equally clear all through",
+        step_text(readings.step)));
+  }
   StepLight steps = steps_of(readings, suns, series, flux);
   if (is_quantum(source.unit)) photons_to_watts(steps, series);
   split_and_note(steps, readings, source, series);
-  fill_and_note(steps, source.allow_gaps, source.file.string(), series);
+  fill_and_note(steps, source.allow_gaps, source.file.string(), tally.rejected() > 0 ? tally.notes() : "",
+                series);
   write_steps(steps, series);
   series.description = describe(readings, source, series);
   add_photons(series);

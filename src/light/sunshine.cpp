@@ -120,7 +120,7 @@ double clearness_of_sunshine(double part_of_day, double a_s, double b_s) {
 double day_length_h(Angle sunset_hour_angle) { return 24.0 * sunset_hour_angle.radians() / std::numbers::pi; }
 
 LightSeries make_series(const SunshineSource& source, const LightRequest& request) {
-  const DayRecord record = read_days(source, {source.hours});
+  const DayRecord record = read_days(source, {source.hours}, request.place);
   LightSeries series = open_years(record, request);
   SunshineCheck(record, series).run();
   series.notes = record.notes;
@@ -140,7 +140,7 @@ LightSeries make_series(const SunshineSource& source, const LightRequest& reques
       "global radiation of each day from its hours of sunshine by Angstrom and Prescott (FAO-56 "
       "eq. 35), a_s = {:g} and b_s = {:g}{}",
       source.a_s, source.b_s, usual ? ", which FAO-56 gives for places without values of their own" : ""));
-  fill_days(series, days, {source.split, false, source.allow_gaps, source.file.string()});
+  fill_days(series, days, {source.split, false, source.allow_gaps, source.file.string(), ""});
   return series;
 }
 

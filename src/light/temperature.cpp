@@ -92,7 +92,7 @@ double clearness_of_range(double t_min_c, double t_max_c, double k_rs) {
 double cloudless_clearness(double height_m) { return 0.75 + 2e-5 * height_m; }
 
 LightSeries make_series(const TemperatureSource& source, const LightRequest& request) {
-  const DayRecord record = read_days(source, {source.t_min, source.t_max});
+  const DayRecord record = read_days(source, {source.t_min, source.t_max}, request.place);
   const std::vector<std::size_t> known = known_days(record);
   check_unit(record, known);
   check_order(record, known, source);
@@ -114,7 +114,7 @@ LightSeries make_series(const TemperatureSource& source, const LightRequest& req
       "50), k_rs = {:g} (0.16 inland, 0.19 at a coast): a rough estimate of a day, better of a month",
       source.k_rs));
   if (capped > 0) series.notes.push_back(capped_note(capped, known.size()));
-  fill_days(series, days, {source.split, false, source.allow_gaps, source.file.string()});
+  fill_days(series, days, {source.split, false, source.allow_gaps, source.file.string(), ""});
   return series;
 }
 

@@ -1,14 +1,11 @@
 #include "plan/days_table.h"
 
+#include "plan/record_keys.h"
+
 namespace sunfall {
 namespace {
 
-// Of both tables.
-const PathKey kFile{"file", ""};
 const TextKey kTime{"time", "date", ""};
-const ChoiceKey<char> kDelimiter{"delimiter", {{"auto", '\0'}, {",", ','}, {";", ';'}, {"tab", '\t'}}, '\0'};
-const ChoiceKey<char> kDecimal{"decimal", {{".", '.'}, {",", ','}}, '.'};
-const FlagKey kAllowGaps{"allow_gaps", false, ""};
 
 const TextKey kHours{"hours", "sunshine_hours", ""};
 const NumberKey kAs{"a_s", {0.0, 0.6, "", "FAO-56 gives 0.25 where nothing is known of the place"}, 0.25};
@@ -20,22 +17,17 @@ const TextKey kTMin{"t_min", "t_min", ""};
 const TextKey kTMax{"t_max", "t_max", ""};
 const NumberKey kKrs{"k_rs", {0.1, 0.3, "", "FAO-56 gives 0.16 inland and 0.19 at a coast"}, 0.16};
 
-void read_file_keys(TableReader& table, DaysFile& source) {
-  source.file = table.path(kFile);
-  source.time = table.text(kTime);
-  source.delimiter = table.choice(kDelimiter);
-  source.decimal = table.choice(kDecimal);
-}
-
 }  // namespace
 
 TableShape sunshine_shape() {
-  return {"light.sunshine", {kFile, kTime, kHours, kAs, kBs, kDelimiter, kDecimal, kAllowGaps}};
+  return {"light.sunshine",
+          {kCsvFile, kTime, kHours, kAs, kBs, kCsvDelimiter, kCsvDecimal, kAllowGaps, kCsvLatitude,
+           kCsvLongitude}};
 }
 
 SunshineSource read_sunshine_table(TableReader& table) {
   SunshineSource source;
-  read_file_keys(table, source);
+  read_csv_keys(table, kTime, source);
   source.hours = table.text(kHours);
   source.a_s = table.number(kAs);
   source.b_s = table.number(kBs);
@@ -49,12 +41,14 @@ SunshineSource read_sunshine_table(TableReader& table) {
 }
 
 TableShape temperature_shape() {
-  return {"light.temperature", {kFile, kTime, kTMin, kTMax, kKrs, kDelimiter, kDecimal, kAllowGaps}};
+  return {"light.temperature",
+          {kCsvFile, kTime, kTMin, kTMax, kKrs, kCsvDelimiter, kCsvDecimal, kAllowGaps, kCsvLatitude,
+           kCsvLongitude}};
 }
 
 TemperatureSource read_temperature_table(TableReader& table) {
   TemperatureSource source;
-  read_file_keys(table, source);
+  read_csv_keys(table, kTime, source);
   source.t_min = table.text(kTMin);
   source.t_max = table.text(kTMax);
   source.k_rs = table.number(kKrs);

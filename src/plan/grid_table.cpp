@@ -1,5 +1,7 @@
 #include "plan/grid_table.h"
 
+#include "plan/record_keys.h"
+
 namespace sunfall {
 namespace {
 
@@ -7,7 +9,6 @@ using Accumulated = GridSource::Accumulated;
 using BeamPlane = GridSource::BeamPlane;
 using Point = GridSource::Point;
 using Stamp = SeriesSource::Stamp;
-using Split = SeriesSource::Split;
 using Unit = SeriesSource::Unit;
 
 const PathKey kFile{"file", ""};
@@ -34,10 +35,6 @@ const ChoiceKey<Accumulated> kAccumulated{
     "accumulated", {{"step", Accumulated::step}, {"start", Accumulated::start}}, Accumulated::step};
 const ChoiceKey<Point> kPoint{
     "point", {{"nearest", Point::nearest}, {"bilinear", Point::bilinear}}, Point::nearest};
-const ChoiceKey<Split> kSplit{
-    "split", {{"logistic", Split::logistic}, {"erbs", Split::erbs}}, Split::logistic};
-const FlagKey kAllowGaps{"allow_gaps", false, ""};
-const FlagKey kTrustClock{"trust_clock", false, ""};
 
 void check_variables(const TableReader& table, const GridSource& source) {
   const bool parts = !source.diffuse.empty() && !source.beam.empty();
@@ -64,7 +61,7 @@ void check_variables(const TableReader& table, const GridSource& source) {
 
 TableShape grid_shape() {
   return {"light.grid",
-          {kFile, kGlobal, kDiffuse, kBeam, kBeamPlane, kStamp, kUnit, kAccumulated, kPoint, kSplit,
+          {kFile, kGlobal, kDiffuse, kBeam, kBeamPlane, kStamp, kUnit, kAccumulated, kPoint, kHourSplit,
            kAllowGaps, kTrustClock}};
 }
 
@@ -79,7 +76,7 @@ GridSource read_grid_table(TableReader& table) {
   source.unit = table.choice(kUnit);
   source.accumulated = table.choice(kAccumulated);
   source.point = table.choice(kPoint);
-  source.split = table.choice(kSplit);
+  source.split = table.choice(kHourSplit);
   source.allow_gaps = table.flag(kAllowGaps);
   source.trust_clock = table.flag(kTrustClock);
   check_variables(table, source);

@@ -1,15 +1,14 @@
 #include "plan/series_table.h"
 
 #include "light/flux_unit.h"
+#include "plan/record_keys.h"
 
 namespace sunfall {
 namespace {
 
 using Stamp = SeriesSource::Stamp;
 using Unit = SeriesSource::Unit;
-using Split = SeriesSource::Split;
 
-const PathKey kFile{"file", ""};
 const TextKey kTime{"time", "time", ""};
 const ChoiceKey<Stamp> kStamp{
     "stamp",
@@ -35,13 +34,7 @@ const ChoiceKey<Unit> kUnit{"unit",
                              {"mol m-2 d-1", Unit::mol_m2_d}},
                             Unit::w_m2,
                             true};
-const ChoiceKey<char> kDelimiter{"delimiter", {{"auto", '\0'}, {",", ','}, {";", ';'}, {"tab", '\t'}}, '\0'};
-const ChoiceKey<char> kDecimal{"decimal", {{".", '.'}, {",", ','}}, '.'};
 const FlagKey kUtc{"utc", false, ""};
-const ChoiceKey<Split> kSplit{
-    "split", {{"logistic", Split::logistic}, {"erbs", Split::erbs}}, Split::logistic};
-const FlagKey kAllowGaps{"allow_gaps", false, ""};
-const FlagKey kTrustClock{"trust_clock", false, ""};
 
 // What the file's light is must follow from the plan, before the file is read.
 void check_columns(const TableReader& table, const SeriesSource& source) {
@@ -72,8 +65,8 @@ void check_days(const TableReader& table, const SeriesSource& source) {
     table.refuse(kUnit.name, "a unit per day is for a daily record", in_quotes(kUnit.name_of(source.unit)),
                  "Give stamp = \"day\" if each line is a day's");
   }
-  if (table.has(kSplit.name)) {
-    table.refuse(kSplit.name, "this split is for hours", "stamp = \"day\"",
+  if (table.has(kHourSplit.name)) {
+    table.refuse(kHourSplit.name, "this split is for hours", "stamp = \"day\"",
                  "Remove it; [light] day_split is for days");
   }
   for (const std::string& name : {kUtc.name, kTrustClock.name}) {
@@ -88,26 +81,23 @@ void check_days(const TableReader& table, const SeriesSource& source) {
 
 TableShape series_shape() {
   return {"light.series",
-          {kFile, kTime, kStamp, kGlobal, kDiffuse, kBeam, kUnit, kDelimiter, kDecimal, kUtc, kSplit,
-           kAllowGaps, kTrustClock}};
+          {kCsvFile, kTime, kStamp, kGlobal, kDiffuse, kBeam, kUnit, kCsvDelimiter, kCsvDecimal, kUtc,
+           kHourSplit, kAllowGaps, kTrustClock, kCsvLatitude, kCsvLongitude}};
 }
 
 SeriesSource read_series_table(TableReader& table) {
   SeriesSource source;
-  source.file = table.path(kFile);
-  source.time = table.text(kTime);
+  read_csv_keys(table, kTime, source);
   source.stamp = table.choice(kStamp);
   source.global = table.optional_text(kGlobal).value_or("");
   source.diffuse = table.optional_text(kDiffuse).value_or("");
   source.beam = table.optional_text(kBeam).value_or("");
   source.unit = table.choice(kUnit);
-  source.delimiter = table.choice(kDelimiter);
-  source.decimal = table.choice(kDecimal);
   source.allow_gaps = table.flag(kAllowGaps);
   check_days(table, source);
   if (source.stamp != Stamp::day) {
     source.utc = table.flag(kUtc);
-    source.split = table.choice(kSplit);
+    source.split = table.choice(kHourSplit);
     source.trust_clock = table.flag(kTrustClock);
   }
   check_columns(table, source);

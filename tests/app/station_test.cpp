@@ -6,19 +6,14 @@
 #include <nlohmann/json.hpp>
 #include <sstream>
 
-#include "app/small_farm.h"
-#include "light/station.h"
+#include "app/record_farm.h"
 
 namespace sunfall::test {
 namespace {
 
 using testing::HasSubstr;
 
-// The farm's place; its clock is that of Amsterdam.
-const LightSeries& truth() {
-  static const LightSeries series = cloudy_truth(place_at(51.95, 5.77, 13.0), 2025, "+01:00");
-  return series;
-}
+const LightSeries& truth() { return farm_truth(); }
 
 const std::string kColumns = "stamp = 'end'\nglobal = 'ghi'\ndiffuse = 'dhi'\nunit = 'W m-2'\n";
 

@@ -94,10 +94,10 @@ TEST(SeriesRefusals, OrderAndSpacing) {
   EXPECT_EQ(refusal.what, "the time stamps go backward");
   refusal = refusal_of(
       "time,ghi\n2025-01-01T05:00,1\n2025-01-01T06:00,2\n2025-01-01T07:00,3\n2025-01-01T07:25,3\n");
-  EXPECT_EQ(refusal.what, "the time stamps are not equally spaced");
+  EXPECT_EQ(refusal.what, "the times are not equally spaced");
   EXPECT_THAT(refusal.found, HasSubstr("1500 seconds"));
   refusal = refusal_of("time,ghi\n2025-01-01T00:00,1\n2025-01-02T00:00,2\n2025-01-03T00:00,3\n");
-  EXPECT_EQ(refusal.what, "the record's step must be whole minutes, from 1 to 60");
+  EXPECT_EQ(refusal.what, "the record's step must be 1 to 60 whole minutes, or 2, 3, 4, 6, 8 or 12 hours");
 }
 
 TEST(SeriesRefusals, AMistypedYear) {

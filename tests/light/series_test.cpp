@@ -75,6 +75,26 @@ TEST(Series, AnyStepKeepsTheSum) {
   }
 }
 
+// Hours in a row that a file sums up keep their sum too; when within them the sun shone is lost. Photons per
+// joule lie between 1.971 and 2.099: what moves from clear to dull hours changes them by 3.2 % at the most.
+TEST(Series, StepsOfHoursKeepTheSum) {
+  for (const int hours : {2, 3, 4, 6, 8, 12}) {
+    SCOPED_TRACE(hours);
+    const LightSeries back = run_back(lowland_truth(), {.step_min = 60 * hours, .columns = "gd"});
+    expect_sound(back);
+    const auto found = monthly_global_mj_m2_d(back);
+    const auto truth = monthly_global_mj_m2_d(lowland_truth());
+    const MonthlyLight found_dli = monthly_dli(back);
+    const MonthlyLight truth_dli = monthly_dli(lowland_truth());
+    for (std::size_t month = 0; month < 12; ++month) {
+      EXPECT_NEAR(found[month], truth[month], 1e-4 * truth[month]);
+      EXPECT_NEAR(found_dli.total(month), truth_dli.total(month), 0.032 * truth_dli.total(month));
+    }
+    EXPECT_THAT(back.description, testing::HasSubstr("every " + std::to_string(hours) + " hours"));
+    EXPECT_THAT(back.notes, testing::Contains(testing::HasSubstr("hide when within them the sun shone")));
+  }
+}
+
 // Ten-minute records come back step by step, to the seven digits that were written.
 TEST(Series, TenMinutesPassUnchanged) {
   const LightSeries back = run_back(lowland_truth(), {.step_min = 10, .columns = "gd"});
