@@ -13,34 +13,90 @@ namespace {
 
 constexpr int kLatticeYears = 3;
 
-// Adds light at a direction, shared bilinearly among the lines and steps around it.
+// The sun moves a few degrees within a step; its light is laid along the path in this many pieces,
+// so that lines between two steps of the clock are not left empty.
+constexpr int kPieces = 12;
+
+// Where a step's pieces lie on the dome and what each adds.
+struct BeamPieces {
+  double line[kPieces];    // in lines, from -lines / 2 to lines / 2
+  double step[kPieces];    // in steps
+  double level[kPieces];   // parts of the step's light
+  double facing[kPieces];  // the same on a plane that faces the piece's azimuth
+};
+
+// atan(x), |x| < 0.1, to 1e-14: the next term is x^15 / 15.
+double small_arc(double x) {
+  const double s = x * x;
+  return x * (1.0 - s * (1.0 / 3 - s * (1.0 / 5 - s * (1.0 / 7 - s * (1.0 / 9 - s * (1.0 / 11 - s / 13))))));
+}
+
+// Lays a step's light along its path and shares it bilinearly among the lines and steps around.
 class BeamBins {
  public:
   BeamBins(const Dome& dome, GatheredLight& light)
       : light_(light), lines_(dome.lines()), steps_(dome.steps()) {}
 
-  void add(const SkyDirection& direction, double level) {
-    const double sine = std::clamp(direction.up, 0.0, 1.0);
-    const double turn = std::atan2(direction.east, direction.north) / (2.0 * std::numbers::pi);
-    const double line = turn * lines_ - 0.5;
-    const double step = std::clamp(sine * steps_ - 0.5, 0.0, steps_ - 1.0);
-    const double line_floor = std::floor(line);
-    const int step0 = std::min(static_cast<int>(step), steps_ - 1);
-    const int step1 = std::min(step0 + 1, steps_ - 1);
-    const int line0 = wrapped_line(static_cast<int>(line_floor));
-    const int line1 = wrapped_line(static_cast<int>(line_floor) + 1);
-    const double across = line - line_floor, up = step - step0;
-    // On a plane that faces the direction's azimuth light counts by its cosine of elevation.
-    const double facing = level * std::sqrt(1.0 - sine * sine) / std::max(sine, 0.25 / steps_);
-    put(line0, step0, level, facing, (1 - across) * (1 - up));
-    put(line1, step0, level, facing, across * (1 - up));
-    put(line0, step1, level, facing, (1 - across) * up);
-    put(line1, step1, level, facing, across * up);
+  void add(const SkyDirection& from, const SkyDirection& to, double mol) {
+    const BeamPieces pieces = cut(from, to);
+    for (int k = 0; k < kPieces; ++k) {
+      if (pieces.level[k] > 0.0) put(pieces, k, mol);
+    }
   }
 
  private:
-  int wrapped_line(int line) const { return (line % lines_ + lines_) % lines_; }
-  void put(int line, int step, double level, double facing, double weight) {
+  BeamPieces cut(const SkyDirection& from, const SkyDirection& to) const {
+    const double east = to.east - from.east, north = to.north - from.north, rise = to.up - from.up;
+    double e[kPieces], n[kPieces], sine[kPieces], turn[kPieces];
+    double sum = 0.0;
+    for (int k = 0; k < kPieces; ++k) {
+      const double t = (k + 0.5) / kPieces;
+      e[k] = from.east + t * east;
+      n[k] = from.north + t * north;
+      const double up = from.up + t * rise;
+      sine[k] = std::clamp(up / std::sqrt(e[k] * e[k] + n[k] * n[k] + up * up), 0.0, 1.0);
+    }
+    for (const double value : sine) sum += value;
+    // From piece to piece the azimuth turns by a little; near the zenith by more, and then each is asked.
+    turn[0] = std::atan2(e[0], n[0]);
+    for (int k = 1; k < kPieces; ++k) {
+      const double tangent = (e[k] * n[k - 1] - n[k] * e[k - 1]) / (e[k] * e[k - 1] + n[k] * n[k - 1]);
+      turn[k] = std::abs(tangent) < 0.1 && e[k] * e[k - 1] + n[k] * n[k - 1] > 0.0
+                    ? turn[k - 1] + small_arc(tangent)
+                    : std::atan2(e[k], n[k]);
+    }
+    BeamPieces pieces;
+    for (int k = 0; k < kPieces; ++k) {
+      // A step with beam but both edges below the horizon cannot happen in a sound series; its light
+      // then stays at the horizon rather than being lost.
+      pieces.level[k] = sum > 0.0 ? sine[k] / sum : 1.0 / kPieces;
+      // On a plane that faces the direction's azimuth light counts by its cosine of elevation.
+      pieces.facing[k] =
+          pieces.level[k] * std::sqrt(1.0 - sine[k] * sine[k]) / std::max(sine[k], 0.25 / steps_);
+      pieces.line[k] = turn[k] / (2.0 * std::numbers::pi) * lines_ - 0.5;
+      pieces.step[k] = std::clamp(sine[k] * steps_ - 0.5, 0.0, steps_ - 1.0);
+    }
+    return pieces;
+  }
+
+  void put(const BeamPieces& pieces, int k, double mol) {
+    const double line_floor = std::floor(pieces.line[k]);
+    const int step0 = std::min(static_cast<int>(pieces.step[k]), steps_ - 1);
+    const int step1 = std::min(step0 + 1, steps_ - 1);
+    const int line0 = wrapped_line(static_cast<int>(line_floor));
+    const int line1 = wrapped_line(static_cast<int>(line_floor) + 1);
+    const double across = pieces.line[k] - line_floor, up = pieces.step[k] - step0;
+    const double level = mol * pieces.level[k], facing = mol * pieces.facing[k];
+    put_at(line0, step0, level, facing, (1 - across) * (1 - up));
+    put_at(line1, step0, level, facing, across * (1 - up));
+    put_at(line0, step1, level, facing, (1 - across) * up);
+    put_at(line1, step1, level, facing, across * up);
+  }
+  int wrapped_line(int line) const {
+    const int once = line < 0 ? line + lines_ : line;
+    return once < 0 || once >= lines_ ? (once % lines_ + lines_) % lines_ : once;
+  }
+  void put_at(int line, int step, double level, double facing, double weight) {
     const std::size_t at =
         static_cast<std::size_t>(line) * static_cast<std::size_t>(steps_) + static_cast<std::size_t>(step);
     light_.beam_level[at] += level * weight;
@@ -51,33 +107,6 @@ class BeamBins {
   int lines_;
   int steps_;
 };
-
-// The sun moves a few degrees within a step; its light is laid along the path in this many pieces,
-// so that lines between two steps of the clock are not left empty.
-constexpr int kPieces = 12;
-
-void add_beam(const LightSeries& series, std::size_t i, double mol, BeamBins& bins) {
-  const SkyDirection& from = series.sun.edges[i];
-  const SkyDirection& to = series.sun.edges[i + 1];
-  SkyDirection pieces[kPieces];
-  double weight[kPieces], sum = 0.0;
-  for (int k = 0; k < kPieces; ++k) {
-    const double t = (k + 0.5) / kPieces;
-    SkyDirection& d = pieces[k];
-    d = {from.east + t * (to.east - from.east), from.north + t * (to.north - from.north),
-         from.up + t * (to.up - from.up)};
-    const double length = std::sqrt(d.east * d.east + d.north * d.north + d.up * d.up);
-    d = {d.east / length, d.north / length, d.up / length};
-    weight[k] = std::max(d.up, 0.0);
-    sum += weight[k];
-  }
-  for (int k = 0; k < kPieces; ++k) {
-    // A step with beam but both edges below the horizon cannot happen in a sound series; its light
-    // then stays at the horizon rather than being lost.
-    const double part = sum > 0.0 ? weight[k] / sum : 1.0 / kPieces;
-    if (part > 0.0) bins.add(pieces[k], mol * part);
-  }
-}
 
 SUNFALL_CLONES void add_scaled(const float* __restrict values, double scale, std::size_t count,
                                double* __restrict sums) {
@@ -125,7 +154,8 @@ GatheredLight gather_light(const LightSeries& series, const std::vector<std::siz
   for (const std::size_t day : days) {
     for (std::size_t i = day * steps_per_day; i < (day + 1) * steps_per_day; ++i) {
       const LightStep& step = series.steps[i];
-      if (step.beam_umol > 0.0F) add_beam(series, i, step.beam_umol * mol_per_umol_s, bins);
+      if (step.beam_umol > 0.0F)
+        bins.add(series.sun.edges[i], series.sun.edges[i + 1], step.beam_umol * mol_per_umol_s);
       if (step.sky_umol > 0.0F) sky_steps.push_back(i);
     }
   }
