@@ -27,21 +27,20 @@ class ReadingsReader {
       const std::optional<TimeStamp> stamp = parse_time_stamp(file_.stamp());
       if (stamp) {
         add(*stamp);
+      } else if (parse_date(file_.stamp())) {
+        file_.refuse("the stamp is a date without a time", shown_text(file_.stamp()),
+                     "for one line a day give stamp = \"day\", else write 2025-06-01T12:00");
       } else if (!file_.may_leave_out()) {
-        file_.refuse(
-            "the time stamp cannot be read", shown_text(file_.stamp()),
-            "write ISO 8601, 2025-06-01T12:00 or 2025-06-01T12:00+01:00; dates alone are the stamps of a "
-            "daily record, stamp = \"day\"");
+        file_.refuse("the time stamp cannot be read", shown_text(file_.stamp()),
+                     "write ISO 8601, 2025-06-01T12:00 or 2025-06-01T12:00+01:00");
       }
     }
     if (readings_.size() < 2) {
-      throw Error(
-          ErrorKind::data,
-          {.what = "the file holds no record",
-           .where = readings_.file,
-           .found = fmt::format("{} lines with a time stamp", readings_.size()),
-           .remedy = "write ISO 8601, 2025-06-01T12:00, in the column of time stamps; dates alone are "
-                     "the stamps of a daily record, stamp = \"day\""});
+      throw Error(ErrorKind::data,
+                  {.what = "the file holds no record",
+                   .where = readings_.file,
+                   .found = fmt::format("{} lines with a time stamp", readings_.size()),
+                   .remedy = "write ISO 8601, 2025-06-01T12:00, in the column of time stamps"});
     }
     finish();
     return std::move(readings_);

@@ -69,6 +69,7 @@ std::int64_t begin_before_stamp_s(SeriesSource::Stamp stamp, std::chrono::second
 
 std::string step_text(std::chrono::seconds step) {
   return step.count() > kHour_s ? fmt::format("{} hours", step.count() / kHour_s)
+         : step.count() == 60   ? "minute"
                                 : fmt::format("{} minutes", step.count() / 60);
 }
 

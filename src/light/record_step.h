@@ -20,7 +20,7 @@ std::chrono::seconds record_step(const std::vector<std::int64_t>& time_s, const 
 // How long before its stamp an interval of a record with a clock begins.
 std::int64_t begin_before_stamp_s(SeriesSource::Stamp stamp, std::chrono::seconds step);
 
-// "60 minutes", "3 hours".
+// "minute", "60 minutes", "3 hours", behind "every".
 std::string step_text(std::chrono::seconds step);
 
 }  // namespace sunfall

@@ -100,6 +100,9 @@ TEST(Days, FaultsHaveTheirMessages) {
   refused(radiation() + "2025-12-31,50\n", kSeries, 3, {"days.csv:367", "the same day comes twice"});
   refused(radiation() + "2025-13-01,5\n", kSeries, 3, {"days.csv:367", "the date cannot be read"});
   refused(radiation() + "2026-01-01T01:00,5\n", kSeries, 3, {"days.csv:367", "its date alone"});
+  refused(radiation(),
+          "[light.series]\nfile = 'days.csv'\ntime = 'date'\nstamp = 'end'\nglobal = 'g'\nunit = 'MJ m-2'\n",
+          3, {"days.csv:2", "the stamp is a date without a time", "\"2025-01-01\"", "stamp = \"day\""});
   refused(sunshine(60.0), kSunshine, 3, {"not hours of sunshine", "minutes"});
   refused("date,sunshine_hours\n2025-01-01,-1\n2025-01-02,0\n", kSunshine, 3, {"days.csv:2", "negative"});
   refused("date,sunshine_hours\n2025-01-01,1\n2025-01-02,9.5\n", kSunshine, 3,

@@ -236,7 +236,8 @@ TEST(Grid, WantsEvenSteps) {
   PointRecord record = hours();
   for (std::size_t i = 0; i < record.time_s.size(); ++i)
     record.time_s[i] = record.time_s[0] + 18000 * std::int64_t(i);
-  EXPECT_THAT(fault_of(global_alone(), record), HasSubstr("or 2, 3, 4, 6, 8 or 12 hours (found: 18000 seconds"));
+  EXPECT_THAT(fault_of(global_alone(), record),
+              HasSubstr("or 2, 3, 4, 6, 8 or 12 hours (found: 18000 seconds"));
   record = hours();
   record.time_s[100] += 600;
   EXPECT_THAT(fault_of(global_alone(), record), HasSubstr("era.nc time number 101"));
