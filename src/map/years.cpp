@@ -30,7 +30,8 @@ std::array<double, 12> month_parts(const std::vector<OpenYear>& years) {
 }
 
 void take_year(OpenField& open, const std::vector<OpenYear>& years) {
-  open.years = years;
+  // Made years do not stand for years: nothing behind this tells them apart.
+  if (years.empty() || !years.front().made) open.years = years;
   open.month_part = month_parts(years);
   for (std::size_t m = 0; m < 12; ++m) open.year += open.month_part[m] * (open.beam[m] + open.sky[m]);
 }

@@ -29,11 +29,7 @@ OpenField open_field(const DomeLight& light);
 // The same from the years alone, without a dome; equal to 1e-6.
 OpenField open_field(const std::vector<OpenYear>& years);
 
-// Whether years are told apart: there are some, and they are not made.
-inline bool tells_years(const OpenField& open) { return open.years.size() > 1 && !open.years.front().made; }
-inline bool has_percentiles(const OpenField& open) {
-  return tells_years(open) && open.years.size() >= kLeastYears;
-}
+inline bool has_percentiles(const OpenField& open) { return open.years.size() >= kLeastYears; }
 
 // Missing years (NaN) are left out; missing where fewer than kLeastYears are left.
 YearPercentiles percentiles_over_years(std::vector<double> by_year);

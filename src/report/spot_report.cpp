@@ -95,7 +95,7 @@ void write_spot(const Plan& plan, const Site& site, const Spot& spot, const std:
   draw_sun_path(folder / "sun-path.png", picture);
   draw_sun_path(folder / "sun-path.svg", picture);
   write_months(spot, folder / "months.csv");
-  if (tells_years(spot.open)) write_years_csv(folder / "years.csv", spot.open, spot.periods, spot.shares);
+  if (spot.open.years.size() > 1) write_years_csv(folder / "years.csv", spot.open, spot.periods, spot.shares);
   std::vector<DayStep> rows;
   for (const SpotStep& step : steps) {
     rows.push_back({step.begin, step.sun_azimuth.from_true_north.degrees(), step.sun_elevation.degrees(),

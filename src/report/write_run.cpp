@@ -177,7 +177,7 @@ Summary summary_of(const Plan& plan, const Site& site, const MapResult& maps,
   summary.open_field.dli_year = maps.open.year;
   for (std::size_t p = 0; p < maps.periods.size(); ++p)
     summary.open_field.periods.push_back({maps.periods[p], maps.open.beam[p], maps.open.sky[p]});
-  if (tells_years(maps.open)) summary.open_field.years = years_of(maps.open);
+  if (maps.open.years.size() > 1) summary.open_field.years = years_of(maps.open);
   if (has_percentiles(maps.open)) summary.open_field.over_years = percentiles_of(maps.open);
   summary.grid.columns = maps.frame.columns;
   summary.grid.rows = maps.frame.rows;
@@ -235,7 +235,7 @@ void write_run(const Plan& plan, const Site& site, const MapResult& maps, const 
     told.one_done();
   });
   const std::vector<PlotRow> rows = plot_rows(plots, light, maps);
-  if (tells_years(maps.open)) write_years_csv(folder / "years.csv", maps.open, maps.periods);
+  if (maps.open.years.size() > 1) write_years_csv(folder / "years.csv", maps.open, maps.periods);
   LayerLight year = std::move(light.back());
 
   const MapContext context = context_of(plan, site, plots);
