@@ -1,6 +1,5 @@
 #include "app/command_line.h"
 
-#include "app/leaves_not_mapped.h"
 #include "app/memory.h"
 
 namespace sunfall {
@@ -20,7 +19,6 @@ CLI::App* add_command(CLI::App& app, const std::string& name, const std::string&
 
 Plan plan_of(const CommonOptions& options) {
   Plan plan = read_plan(options.plan);
-  refuse_leaves_not_mapped(plan);
   if (options.dome == "draft") plan.dome.quality = DomeQuality::draft;
   if (options.dome == "standard") plan.dome.quality = DomeQuality::standard;
   if (options.dome == "fine") plan.dome.quality = DomeQuality::fine;

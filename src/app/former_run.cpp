@@ -3,6 +3,7 @@
 #include <fstream>
 #include <nlohmann/json.hpp>
 
+#include "map/casters.h"
 #include "sunfall/error.h"
 
 namespace sunfall {
@@ -11,7 +12,7 @@ namespace {
 namespace fs = std::filesystem;
 
 // Not every run makes these, and the summary does not list them.
-constexpr const char* kCompanions[] = {"plots.csv", "plots.gpkg", "years.csv", "page.html"};
+constexpr const char* kCompanions[] = {"plots.csv", "plots.gpkg", "years.csv", "rows.csv", "page.html"};
 
 // A summary may come from anywhere: only plain names of rasters are taken from it.
 bool is_layer_name(const std::string& name) {
@@ -41,6 +42,7 @@ void require_apart_from_inputs(const Plan& plan, const fs::path& folder) {
   }
   for (const fs::path& file : files_of(plan.light)) inputs.push_back(file);
   if (plan.plots) inputs.push_back(plan.plots->file);
+  for (const fs::path& file : files_of_casters(plan)) inputs.push_back(file);
   std::error_code ignored;
   const fs::path there = fs::weakly_canonical(folder, ignored);
   for (const fs::path& input : inputs) {

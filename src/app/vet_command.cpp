@@ -9,6 +9,7 @@
 
 #include "app/command_line.h"
 #include "app/terminal_progress.h"
+#include "map/casters.h"
 #include "map/layers.h"
 #include "map/open_terrain.h"
 #include "map/site.h"
@@ -28,12 +29,13 @@ struct Estimate {
 
 // Solves a small tile in the middle of the map and scales up. Memory is that of the tiles at work
 // and the coarser levels of the whole map, or afterwards of the layers being finished, and the raster cache.
-Estimate estimate(const Plan& plan, const Terrain& terrain, const DomeLight& light, int jobs) {
+Estimate estimate(const Plan& plan, const Terrain& terrain, const Casters& casters, const DomeLight& light,
+                  int jobs) {
   const GridFrame& frame = terrain.frame();
   const MapOptions options;
   const int side = std::min({192, frame.columns, frame.rows});
   const CellWindow window{(frame.columns - side) / 2, (frame.rows - side) / 2, side, side};
-  const TileSolver solver(terrain, light, plan.site.receiver_plane);
+  const TileSolver solver(terrain, light, plan.site.receiver_plane, casters);
   const auto begin = std::chrono::steady_clock::now();
   solver.solve(terrain.tile(window), Angle());
   const double seconds = std::chrono::duration<double>(std::chrono::steady_clock::now() - begin).count();
@@ -48,13 +50,18 @@ Estimate estimate(const Plan& plan, const Terrain& terrain, const DomeLight& lig
   const double solving =
       jobs * working * (400.0 + 8.0 * double(solver.columns()) + percentiles) + 1.4 * double(frame.size());
   // What a layer holds while it is finished, per cell: found by measuring, a little up.
+  const double leaves = casters.empty()
+                            ? 0.0
+                            : jobs * working * 2.0 * kCasterLooks * double(caster_bands(light.dome).size()) *
+                                  CasterTables::groups_of(casters);
   const double finishing = std::min<double>(jobs, double(layers)) * 6.0 * double(frame.size());
-  out.memory_mib = std::max(solving, finishing) / 1048576.0 + 320.0;
+  out.memory_mib = std::max(solving + leaves, finishing) / 1048576.0 + 320.0;
   return out;
 }
 
 nlohmann::ordered_json as_json(const Plan& plan, const Site& site, const Terrain& terrain,
-                               const DomeLight& light, const Estimate& cost, std::size_t plots) {
+                               const DomeLight& light, const Estimate& cost, std::size_t plots,
+                               const std::vector<std::string>& notes) {
   const OpenField open = open_field(light);
   std::vector<double> months;
   for (std::size_t m = 0; m < 12; ++m) months.push_back(open.beam[m] + open.sky[m]);
@@ -80,11 +87,11 @@ nlohmann::ordered_json as_json(const Plan& plan, const Site& site, const Terrain
           {"expected_s", cost.seconds},
           {"expected_memory_mib", cost.memory_mib},
           {"defaults", plan.defaults},
-          {"notes", site.notes}};
+          {"notes", notes}};
 }
 
 void print_text(const Plan& plan, const Site& site, const Terrain& terrain, const DomeLight& light,
-                const Estimate& cost, std::size_t plots) {
+                const Estimate& cost, std::size_t plots, const std::vector<std::string>& notes) {
   const GridFrame& frame = site.frame;
   const OpenField open = open_field(light);
   fmt::print("{}\n\n", plan.name);
@@ -96,8 +103,10 @@ void print_text(const Plan& plan, const Site& site, const Terrain& terrain, cons
              place_text(site.middle.place), site.middle.place.height_m,
              std::abs(site.middle.convergence.degrees()),
              site.middle.convergence.degrees() < 0 ? "west" : "east");
-  fmt::print("Shade      ground{}{}\n", plan.site.surface ? ", surface" : "",
-             plan.site.far_ground ? ", far ground" : "");
+  fmt::print("Shade      ground{}{}{}{}\n", plan.site.surface ? ", surface" : "",
+             plan.site.far_ground ? ", far ground" : "",
+             plan.canopy.empty() ? "" : fmt::format(", canopy ({})", plan.canopy.size()),
+             plan.rows.empty() ? "" : fmt::format(", crop rows ({})", plan.rows.size()));
   fmt::print("Receiver   {:g} m above the ground, {}\n", plan.site.receiver_height_m,
              plan.site.receiver_plane == ReceiverPlane::level ? "level" : "in the plane of the ground");
   fmt::print("Light      {}{}\n", site.series.description,
@@ -113,7 +122,7 @@ void print_text(const Plan& plan, const Site& site, const Terrain& terrain, cons
   if (!plan.defaults.empty()) fmt::print("\nLeft open in the plan:\n");
   for (const std::string& line : plan.defaults) fmt::print("  {}\n", line);
   fmt::print("\nNotes:\n");
-  for (const std::string& note : site.notes) fmt::print("  {}\n", note);
+  for (const std::string& note : notes) fmt::print("  {}\n", note);
 }
 
 void run_vet(const CommonOptions& options) {
@@ -125,11 +134,14 @@ void run_vet(const CommonOptions& options) {
   const DomeLight light = dome_light_of(plan, site);
   const int jobs =
       options.jobs > 0 ? options.jobs : static_cast<int>(std::max(1U, std::thread::hardware_concurrency()));
-  const Estimate cost = estimate(plan, terrain, light, jobs);
+  const PlanCasters casters = make_casters(plan, terrain);
+  std::vector<std::string> notes = site.notes;
+  notes.insert(notes.end(), casters.notes.begin(), casters.notes.end());
+  const Estimate cost = estimate(plan, terrain, casters.casters, light, jobs);
   if (options.json) {
-    fmt::print("{}\n", as_json(plan, site, terrain, light, cost, plots).dump());
+    fmt::print("{}\n", as_json(plan, site, terrain, light, cost, plots, notes).dump());
   } else if (!options.quiet) {
-    print_text(plan, site, terrain, light, cost, plots);
+    print_text(plan, site, terrain, light, cost, plots, notes);
   }
 }
 

@@ -101,46 +101,101 @@ SUNFALL_CLONES void accumulate_casters(const CasterBatch& batch, const CasterTab
   }
 }
 
-SUNFALL_CLONES void accumulate_crops(const CasterBatch& batch, const CasterTables& tables,
-                                     const LossTable& level, TileCrops& crops) {
+namespace {
+
+// What passes the casters that are no crops, by state.
+inline void passed_by_state(const DepthPlanes& planes, std::size_t cell, const CasterTables& tables,
+                            const std::uint16_t* table, float* passed) {
+  for (int state = 0; state < tables.states(); ++state) {
+    const std::uint32_t* leaf = tables.leaf_of(state);
+    std::uint32_t depth = 0;
+    for (std::size_t g = 0; g < planes.groups.size(); ++g) {
+      if (!tables.of_crops(static_cast<int>(g))) depth += leaf[g] * planes.groups[g][cell];
+    }
+    const std::uint32_t read = std::min<std::uint32_t>((depth >> 8) + (1 << (kDepthShift - 1)), 65536);
+    passed[state] = 1.0F - static_cast<float>(table[read >> kDepthShift]) * (1.0F / 32767.0F);
+  }
+}
+
+// The light of a band above the horizon, a column's share of the open field's.
+inline float band_light(const CasterTables& tables, const LossTable& level, std::size_t look, int band,
+                        std::size_t step, int column) {
+  const int block = column / kColumnBlock, at = column % kColumnBlock;
+  const std::uint16_t* low = tables.edges(look, block) + static_cast<std::size_t>(band) * kColumnBlock + at;
+  const int below = level.look(look, block)[step * kColumnBlock + static_cast<std::size_t>(at)];
+  return static_cast<float>(std::max(low[kColumnBlock] - std::max<int>(low[0], below), 0)) *
+         static_cast<float>(level.units()[static_cast<std::size_t>(column)]);
+}
+
+// What a crop takes from one look above each horizon step that is met, where nothing else stands before it.
+class TakenAbove {
+ public:
+  TakenAbove(const CasterLook& look, std::size_t crop, const CasterTables& tables, const LossTable& level)
+      : look_(look), crop_(crop), tables_(tables), level_(level), rows_(kHorizonSteps) {}
+  // [right, left, came][columns]
+  const std::vector<float>& row(std::size_t step) {
+    std::vector<float>& row = rows_[step];
+    if (!row.empty()) return row;
+    const std::size_t columns = static_cast<std::size_t>(level_.columns());
+    row.assign(3 * columns, 0.0F);
+    for (const DepthPlanes& planes : look_.bands) {
+      const CropTaken* taken = planes.crops.data() + crop_ * static_cast<std::size_t>(tables_.states());
+      for (std::size_t c = 0; c < columns; ++c) {
+        const float light = band_light(tables_, level_, look_.look, planes.band, step, static_cast<int>(c));
+        const CropTaken& of_state = taken[tables_.state_of_column()[c]];
+        row[c] += light * of_state.right;
+        row[columns + c] += light * of_state.left;
+        row[2 * columns + c] += light * of_state.leafed;
+      }
+    }
+    return row;
+  }
+
+ private:
+  const CasterLook& look_;
+  std::size_t crop_;
+  const CasterTables& tables_;
+  const LossTable& level_;
+  std::vector<std::vector<float>> rows_;
+};
+
+}  // namespace
+
+void accumulate_crops(const CasterBatch& batch, const CasterTables& tables, const LossTable& level,
+                      TileCrops& crops) {
   const std::uint16_t* const table = taken_table().data();
-  const int columns = crops.columns;
-  float part[kMostStates];
+  const std::size_t columns = static_cast<std::size_t>(crops.columns);
+  float passed[kMostStates];
   for (std::size_t i = 0; i < crops.crops.size(); ++i) {
     const TileCrops::Crop& crop = crops.crops[i];
-    for (std::size_t k = 0; k < crop.cells.size(); ++k) {
-      const std::size_t cell = crop.cells[k];
-      const std::size_t row = cell / batch.columns, column = cell % batch.columns;
-      const std::size_t place = batch.by_columns ? column * batch.rows + row : cell;
-      float* const right = crops.taken.data() + crop.slots[k] * std::size_t{2} * columns;
-      float* const left = right + columns;
-      float* const came = crops.came.data() + crop.slots[k] * std::size_t{1} * columns;
-      for (const CasterLook& look : batch.looks) {
-        const std::size_t step = std::size_t{look.steps[place]} * kColumnBlock;
+    for (const CasterLook& look : batch.looks) {
+      TakenAbove alone(look, i, tables, level);
+      const bool others = std::any_of(look.bands.begin(), look.bands.end(),
+                                      [](const DepthPlanes& planes) { return planes.others; });
+      for (std::size_t k = 0; k < crop.cells.size(); ++k) {
+        const std::size_t cell = crop.cells[k];
+        const std::size_t row = cell / static_cast<std::size_t>(batch.columns),
+                          column = cell % static_cast<std::size_t>(batch.columns);
+        const std::size_t step =
+            look.steps[batch.by_columns ? column * static_cast<std::size_t>(batch.rows) + row : cell];
+        float* const taken = crops.taken.data() + crop.slots[k] * 2 * columns;
+        float* const came = crops.came.data() + crop.slots[k] * columns;
+        if (!others) {
+          const std::vector<float>& above = alone.row(step);
+          for (std::size_t c = 0; c < 2 * columns; ++c) taken[c] += above[c];
+          for (std::size_t c = 0; c < columns; ++c) came[c] += above[2 * columns + c];
+          continue;
+        }
         for (const DepthPlanes& planes : look.bands) {
-          for (int state = 0; state < tables.states(); ++state) {
-            const std::uint32_t* leaf = tables.leaf_of(state);
-            std::uint32_t depth = 0;
-            for (std::size_t g = 0; g < planes.groups.size(); ++g) {
-              if (!tables.of_crops(static_cast<int>(g))) depth += leaf[g] * planes.groups[g][cell];
-            }
-            const std::uint32_t read =
-                std::min<std::uint32_t>((depth >> 8) + (1 << (kDepthShift - 1)), 65536);
-            part[state] = (1.0F - static_cast<float>(table[read >> kDepthShift]) * (1.0F / 32767.0F)) *
-                          static_cast<float>(leaf[crop.group]) * (1.0F / 256.0F);
-          }
-          const CropTaken taken = planes.crops[i];
-          for (int c = 0; c < columns; ++c) {
-            const int block = c / kColumnBlock, at = c % kColumnBlock;
-            const std::uint16_t* low =
-                tables.edges(look.look, block) + static_cast<std::size_t>(planes.band) * kColumnBlock + at;
-            const int below = level.look(look.look, block)[step + static_cast<std::size_t>(at)];
-            const int light = std::max(low[kColumnBlock] - std::max<int>(low[0], below), 0);
-            const float share = static_cast<float>(light) * static_cast<float>(level.units()[c]) *
-                                part[tables.state_of_column()[c]];
-            right[c] += share * taken.right;
-            left[c] += share * taken.left;
-            came[c] += share;
+          passed_by_state(planes, cell, tables, table, passed);
+          const CropTaken* by_state = planes.crops.data() + i * static_cast<std::size_t>(tables.states());
+          for (std::size_t c = 0; c < columns; ++c) {
+            const std::size_t state = tables.state_of_column()[c];
+            const float light =
+                passed[state] * band_light(tables, level, look.look, planes.band, step, static_cast<int>(c));
+            taken[c] += light * by_state[state].right;
+            taken[columns + c] += light * by_state[state].left;
+            came[c] += light * by_state[state].leafed;
           }
         }
       }

@@ -15,7 +15,8 @@ namespace sunfall {
 struct DepthPlanes {
   int band = 0;
   std::vector<const Depth*> groups;
-  std::vector<CropTaken> crops;
+  std::vector<CropTaken> crops;  // [crop][state]
+  bool others = false;           // whether casters that are no crops touch any cell
 };
 
 // Crops of a tile, and what they take: [slot][right, left][columns], shares of the open field's light. Other

@@ -69,18 +69,25 @@ CasterTables::CasterTables(const DomeLight& light, const std::vector<Look>& look
   }
 }
 
+int CasterTables::groups_of(const Casters& casters) {
+  std::vector<std::pair<std::array<double, 12>, bool>> known;
+  for (const auto& caster : casters) {
+    const std::pair group{caster->leafing(), caster->crop().has_value()};
+    if (std::find(known.begin(), known.end(), group) == known.end()) known.push_back(group);
+  }
+  return static_cast<int>(known.size());
+}
+
 void CasterTables::find_states(const DomeLight& light, const Casters& casters, int columns) {
   std::vector<std::array<double, 12>> leafings;
   for (const auto& caster : casters) {
+    const bool crop = caster->crop().has_value();
     int group = 0;
-    while (group < groups_ &&
-           (leafings[group] != caster->leafing() || of_crops_[group] != caster->crop().has_value())) {
-      ++group;
-    }
+    while (group < groups_ && (leafings[group] != caster->leafing() || of_crops_[group] != crop)) ++group;
     group_of_.push_back(group);
     if (group < groups_) continue;
     leafings.push_back(caster->leafing());
-    of_crops_.push_back(caster->crop().has_value());
+    of_crops_.push_back(crop);
     ++groups_;
   }
   std::map<std::vector<std::uint32_t>, int> known;

@@ -24,6 +24,9 @@ struct CasterBand {
 };
 std::vector<CasterBand> caster_bands(const Dome& dome);
 
+// Looks whose depths are kept at a time.
+inline constexpr std::size_t kCasterLooks = 4;
+
 class CasterTables {
  public:
   CasterTables(const DomeLight& light, const std::vector<Look>& looks, const LossTable& level,
@@ -33,6 +36,7 @@ class CasterTables {
 
   // Casters with the same leafing form a group and add up to one depth; crops have groups of their own.
   int groups() const { return groups_; }
+  static int groups_of(const Casters& casters);
   bool of_crops(int group) const { return of_crops_[group]; }
   int group_of(std::size_t caster) const { return group_of_[caster]; }
 

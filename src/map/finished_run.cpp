@@ -220,7 +220,12 @@ MapResult make_maps_on(const FinishedRun& run, const Plan& plan, const OpenField
   std::map<std::string, std::string> origin = provenance;
   origin["SUNFALL_SHARES"] =
       fmt::format("of a finished run (plan {}; light: {}), rounded to 1/4096", run.plan_name(), run.light());
-  LayerSet layers(plan, origin, folder, result);
+  Plan without_rows = plan;
+  if (!plan.rows.empty()) {
+    without_rows.rows.clear();
+    result.notes.push_back("What crop rows take is not made from a finished run's shares");
+  }
+  LayerSet layers(without_rows, origin, folder, result);
   layers.fill([&run](const CellWindow& window) { return run.tile(window); }, "putting the light through",
               options, progress);
   run.require_unchanged();

@@ -34,6 +34,50 @@ std::string ranges_of(const std::vector<Period>& periods) {
   return words.empty() ? "none" : words;
 }
 
+std::string area_words(const AreaPlan& area) {
+  return fmt::format("{} {} {}", fingerprint(area.file).sha256, area.layer, area.where);
+}
+std::string words_of(const NumberOrFile& value) {
+  return value.file ? fingerprint(*value.file).sha256 : fmt::format("{}", value.number);
+}
+std::string words_of(const NumberOrField& value) {
+  return value.field.empty() ? fmt::format("{}", value.number) : value.field;
+}
+
+std::string canopy_words(const Plan& plan) {
+  std::string words;
+  for (const CanopyPlan& canopy : plan.canopy) {
+    if (!words.empty()) words += "; ";
+    if (canopy.trees) {
+      const TreesPlan& trees = *canopy.trees;
+      words +=
+          fmt::format("trees {} {} {} {} {}", area_words(trees.layer), words_of(trees.height_m),
+                      words_of(trees.crown_base_m), trees.crown_width_m ? words_of(*trees.crown_width_m) : "",
+                      trees.leaf_density ? words_of(*trees.leaf_density) : "");
+    } else {
+      words += fmt::format("{} {} {}", words_of(canopy.top_m), words_of(canopy.base_m),
+                           canopy.leaf_density ? words_of(*canopy.leaf_density) : "");
+    }
+    if (canopy.windbreak)
+      words += fmt::format(" porosity {} {}", canopy.windbreak->optical_porosity, canopy.windbreak->width_m);
+    words += fmt::format(" {} {} {} {}", canopy.leaf_angle, canopy.clumping, canopy.absorptance,
+                         fmt::join(canopy.leafing, " "));
+  }
+  return words.empty() ? "none" : words;
+}
+
+std::string rows_words(const Plan& plan) {
+  std::string words;
+  for (const RowsPlan& rows : plan.rows) {
+    const CropRows& r = rows.rows;
+    words += fmt::format("{}{} {} {} {} {} {} {} {} {} {} {} {}", words.empty() ? "" : "; ",
+                         area_words(rows.area), rows.azimuth.from_true_north.degrees(), r.spacing_m,
+                         r.height_m, r.width_m, r.base_m, static_cast<int>(r.section), r.leaf_density,
+                         r.leaf_angle, r.clumping, r.absorptance, fmt::join(rows.leafing, " "));
+  }
+  return words.empty() ? "none" : words;
+}
+
 }  // namespace
 
 std::string day_key(std::chrono::month_day day) {
@@ -48,7 +92,9 @@ GeometryRecord geometry_of(const Plan& plan) {
           {"site.receiver_plane", plan.site.receiver_plane == ReceiverPlane::level ? "level" : "ground"},
           {"periods", ranges_of(plan.periods)},
           {"dome.quality", dome_words(Dome::of(plan.dome.quality))},
-          {"dome.sky", sky_word(plan.dome.sky)}};
+          {"dome.sky", sky_word(plan.dome.sky)},
+          {"canopy", canopy_words(plan)},
+          {"rows", rows_words(plan)}};
 }
 
 }  // namespace sunfall

@@ -6,6 +6,7 @@
 
 #include "core/parallel.h"
 #include "geo/geodesy.h"
+#include "map/casters.h"
 #include "map/layer_set.h"
 #include "map/open_terrain.h"
 #include "map/sight.h"
@@ -36,7 +37,9 @@ MapResult make_maps(const Plan& plan, const DomeLight& light,
   result.open = open_field(light);
   LayerSet layers(plan, provenance, folder, result);
   {
-    const TileSolver solver(*terrain, light, plan.site.receiver_plane);
+    const PlanCasters casters = make_casters(plan, *terrain);
+    result.notes = casters.notes;
+    const TileSolver solver(*terrain, light, plan.site.receiver_plane, casters.casters);
     tbb::enumerable_thread_specific<TileRoom> rooms;
     const auto work = [&](const CellWindow& window) {
       const GridFrame& frame = result.frame;

@@ -1,5 +1,7 @@
 #include "map/spot.h"
 
+#include "map/casters.h"
+
 #include <fmt/format.h>
 
 #include <algorithm>
@@ -47,6 +49,34 @@ std::vector<Angle> horizon_of(const Terrain& terrain, CellIndex cell, Angle conv
   return horizon;
 }
 
+// The casters' view of one cell, kept alive by the function that asks them.
+struct CellLeaves {
+  std::shared_ptr<PlanCasters> casters;
+  TerrainTile tile;
+  std::vector<std::unique_ptr<CasterTile>> views;  // nullptr where a caster cannot touch the cell
+};
+
+std::function<double(Azimuth, double, int)> leaves_of(const std::shared_ptr<PlanCasters>& casters,
+                                                      const Terrain& terrain, CellIndex cell,
+                                                      Angle convergence) {
+  auto leaves = std::make_shared<CellLeaves>();
+  leaves->casters = casters;
+  leaves->tile = terrain.tile({cell.column, cell.row, 1, 1});
+  for (const auto& caster : casters->casters) leaves->views.push_back(caster->tile(leaves->tile));
+  return [leaves, convergence](Azimuth from, double tangent, int month) {
+    const GridAzimuth azimuth = to_grid(from, convergence);
+    double depth = 0.0;
+    for (std::size_t i = 0; i < leaves->views.size(); ++i) {
+      const double leaf = leaves->casters->casters[i]->leafing()[static_cast<std::size_t>(month)];
+      if (!leaves->views[i] || leaf == 0.0) continue;
+      Depth found = 0;
+      leaves->views[i]->add_depth(azimuth, static_cast<float>(tangent), {&found, 1});
+      depth += leaf * found / double(kDepthUnits);
+    }
+    return std::exp(-depth);
+  };
+}
+
 // The horizon at any azimuth, linear between those known.
 double horizon_radians(const std::vector<Angle>& horizon, double azimuth_radians) {
   const double count = static_cast<double>(horizon.size());
@@ -75,8 +105,10 @@ double beam_share(const std::vector<Angle>& horizon, const SkyDirection& from, c
   return all > 0.0 ? seen / all : 1.0;
 }
 
-// For every sector and band, the part of a uniform patch's level light above the horizon.
-std::vector<float> open_parts(const std::vector<Angle>& horizon, const Dome& dome) {
+// For every sector and band, the part of a uniform patch's level light above the horizon that leaves let
+// through.
+std::vector<float> open_parts(const Spot& spot, const Dome& dome, int month) {
+  const std::vector<Angle>& horizon = spot.horizon;
   std::vector<float> parts;
   const int per_sector = static_cast<int>(horizon.size()) / dome.sectors;
   for (int sector = 0; sector < dome.sectors; ++sector) {
@@ -88,7 +120,13 @@ std::vector<float> open_parts(const std::vector<Angle>& horizon, const Dome& dom
             std::clamp(sin(horizon[static_cast<std::size_t>(sector * per_sector + k)]), low, high);
         sum += (high * high - edge * edge) / (high * high - low * low);
       }
-      parts.push_back(static_cast<float>(sum / per_sector));
+      double part = sum / per_sector;
+      if (spot.through_leaves && part > 0.0) {
+        const double sine = 0.5 * (low + high);
+        const Azimuth middle{Angle::degrees(360.0 * (sector + 0.5) / dome.sectors)};
+        part *= spot.through_leaves(middle, sine / std::sqrt(1.0 - sine * sine), month);
+      }
+      parts.push_back(static_cast<float>(part));
     }
   }
   return parts;
@@ -113,7 +151,8 @@ Spot look_at_spot(const Plan& plan, const Terrain& terrain, const DomeLight& lig
   window.rows = std::min(size, frame.rows - window.row);
   const CellIndex middle{window.column + window.columns / 2, window.row + window.rows / 2};
   const Angle convergence = geo_place(frame, frame.centre(middle)).convergence;
-  const TileSolver solver(terrain, light, plan.site.receiver_plane);
+  const auto casters = std::make_shared<PlanCasters>(make_casters(plan, terrain));
+  const TileSolver solver(terrain, light, plan.site.receiver_plane, casters->casters);
   const TileShares shares = solver.solve(terrain.tile(window), convergence);
   const std::size_t cell = static_cast<std::size_t>(spot.cell.row - window.row) * window.columns +
                            (spot.cell.column - window.column);
@@ -130,7 +169,10 @@ Spot look_at_spot(const Plan& plan, const Terrain& terrain, const DomeLight& lig
   }
   spot.year = light_of(shares, spot.open).year[cell];
   spot.shares.assign(shares.of(cell), shares.of(cell) + shares.columns);
-  spot.horizon = horizon_of(terrain, spot.cell, geo_place(frame, spot.centre).convergence);
+  const Angle own = geo_place(frame, spot.centre).convergence;
+  spot.horizon = horizon_of(terrain, spot.cell, own);
+  if (!casters->casters.empty()) spot.through_leaves = leaves_of(casters, terrain, spot.cell, own);
+  spot.notes = casters->notes;
   return spot;
 }
 
@@ -138,7 +180,8 @@ std::vector<SpotStep> spot_day(const Plan& plan, const Site& site, const Spot& s
                                std::chrono::month_day day) {
   const LightSeries& series = site.series;
   const Dome dome = Dome::of(plan.dome.quality);
-  const std::vector<float> open = open_parts(spot.horizon, dome);
+  const std::vector<float> open =
+      open_parts(spot, dome, static_cast<int>(static_cast<unsigned>(day.month())) - 1);
   SkyPatches patches(dome);
   std::vector<SpotStep> steps;
   for (std::size_t i = 0; i < series.steps.size(); ++i) {
@@ -156,6 +199,11 @@ std::vector<SpotStep> spot_day(const Plan& plan, const Site& site, const Spot& s
     step.open_sky_umol = series.steps[i].sky_umol;
     step.beam_umol =
         step.open_beam_umol > 0.0 ? step.open_beam_umol * beam_share(spot.horizon, from, to) : 0.0;
+    if (step.beam_umol > 0.0 && spot.through_leaves) {
+      const double tangent = std::max(0.0, middle.up) / std::max(std::hypot(middle.east, middle.north), 1e-9);
+      step.beam_umol *= spot.through_leaves(step.sun_azimuth, tangent,
+                                            static_cast<int>(static_cast<unsigned>(day.month())) - 1);
+    }
     if (step.open_sky_umol > 0.0) {
       const std::vector<float>& fraction = sky_fractions(patches, plan.dome.sky, series, i);
       double passed = 0.0;

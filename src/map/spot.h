@@ -1,6 +1,7 @@
 #pragma once
 // One place of a plan: its months, its horizon, and a day's light.
 
+#include <functional>
 #include <vector>
 
 #include "map/site.h"
@@ -31,6 +32,10 @@ struct Spot {
   double year = 0.0;
   std::vector<double> shares;  // beam of every period, then sky
   std::vector<Angle> horizon;  // at kSpotAzimuths equal azimuths, the first at true north; ≥ 0
+  // Of light from there, above the horizon, what leaves let through in a month (0 to 11); empty where the
+  // plan has none. Must not outlive the terrain.
+  std::vector<std::string> notes;  // assumptions that were made for the user
+  std::function<double(Azimuth from, double tangent, int month)> through_leaves;
 };
 inline constexpr int kSpotAzimuths = 720;
 

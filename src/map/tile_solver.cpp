@@ -14,8 +14,6 @@ constexpr int kBatch = 8;
 static_assert(kBatch <= kMostLooks);
 // Looks whose horizons are kept at a time: the sums, larger than any cache, pass once for all of them.
 constexpr int kKept = 6 * kBatch;
-// Looks whose depths are kept at a time.
-constexpr std::size_t kCasterLooks = 4;
 
 // The near rows are looked along once for looks that lie within this of it and share its heading.
 constexpr double kNearTolerance_deg = 2.0;
@@ -92,7 +90,7 @@ std::vector<TileSolver::CasterView> TileSolver::views_of(const TerrainTile& tile
   for (std::size_t i = 0; i < casters_.size(); ++i) {
     if (auto view = casters_[i]->tile(tile)) {
       const std::optional<int> crop = casters_[i]->crop();
-      views.push_back({std::move(view), caster_tables_->group_of(i), crop});
+      views.push_back({std::move(view), caster_tables_->group_of(i), crop, casters_[i]->one_state()});
     }
   }
   return views;
@@ -121,6 +119,23 @@ TileCrops TileSolver::crops_of(std::span<const CasterView> views, std::size_t ce
   return out;
 }
 
+// In every state of leaf.
+void TileSolver::append_taken(const CasterView& view, GridAzimuth azimuth, float tangent,
+                              std::vector<CropTaken>& out) const {
+  for (int state = 0; state < caster_tables_->states(); ++state) {
+    const double leaf = caster_tables_->leaf_of(state)[view.group] / 256.0;
+    CropTaken taken;
+    if (view.one_state) {
+      taken = leaf > 0.0 ? view.tile->taken(azimuth, tangent, 1.0) : CropTaken{};
+      const float part = static_cast<float>(leaf);
+      taken = {part * taken.right, part * taken.left, part};
+    } else {
+      taken = view.tile->taken(azimuth, tangent, leaf);
+    }
+    out.push_back(taken);
+  }
+}
+
 template <typename Take>
 void TileSolver::caster_batches(const HorizonBatch& horizons, std::span<const CasterView> views,
                                 Angle convergence, TileRoom& room, Take take) const {
@@ -144,14 +159,16 @@ void TileSolver::caster_batches(const HorizonBatch& horizons, std::span<const Ca
     for (std::size_t b = 0; b < bands.size() && bands[b].tangent <= highest; ++b) {
       Depth* const planes = room.depths.data() + planes_used * cells;
       std::fill(planes, planes + cells * groups, Depth{0});
-      bool touched = false;
+      bool touched = false, others = false;
       for (const CasterView& view : views) {
         const std::span<Depth> plane(planes + cells * static_cast<std::size_t>(view.group), cells);
-        touched = view.tile->add_depth(azimuth, bands[b].tangent, plane) || touched;
+        const bool added = view.tile->add_depth(azimuth, bands[b].tangent, plane);
+        touched = touched || added;
+        others = others || (added && !view.crop);
       }
-      DepthPlanes of_band{static_cast<int>(b), {}, {}};
+      DepthPlanes of_band{static_cast<int>(b), {}, {}, others};
       for (const CasterView& view : views) {
-        if (view.crop) of_band.crops.push_back(view.tile->taken(azimuth, bands[b].tangent));
+        if (view.crop) append_taken(view, azimuth, bands[b].tangent, of_band.crops);
       }
       if (!touched && of_band.crops.empty()) continue;
       for (int g = 0; g < groups; ++g) of_band.groups.push_back(planes + cells * static_cast<std::size_t>(g));

@@ -57,8 +57,11 @@ class TileSolver {
     std::unique_ptr<CasterTile> tile;
     int group = 0;
     std::optional<int> crop;
+    bool one_state = false;
   };
   std::vector<CasterView> views_of(const TerrainTile& tile) const;
+  void append_taken(const CasterView& view, GridAzimuth azimuth, float tangent,
+                    std::vector<CropTaken>& out) const;
   TileCrops crops_of(std::span<const CasterView> views, std::size_t cells) const;
   void solve_level(HorizonSweep& sweep, std::span<const CasterView> views, Angle convergence, TileRoom& room,
                    TileShares& out) const;

@@ -9,8 +9,10 @@
 #include "core/month_names.h"
 #include "core/parallel.h"
 #include "geo/layer_writer.h"
+#include "map/casters.h"
 #include "map/layers.h"
 #include "report/contact_sheet.h"
+#include "report/rows_table.h"
 #include "report/statistics.h"
 #include "report/style_sld.h"
 #include "report/summary.h"
@@ -137,6 +139,9 @@ std::vector<Summary::Input> inputs_of(const Plan& plan) {
   if (plan.site.far_ground) add(*plan.site.far_ground);
   for (const std::filesystem::path& file : files_of(plan.light)) add(file);
   if (plan.plots) add(plan.plots->file);
+  for (const std::filesystem::path& file : files_of_casters(plan)) {
+    if (!plan.plots || file != plan.plots->file) add(file);
+  }
   return inputs;
 }
 
@@ -236,6 +241,7 @@ void write_run(const Plan& plan, const Site& site, const MapResult& maps, const 
   });
   const std::vector<PlotRow> rows = plot_rows(plots, light, maps);
   if (maps.open.years.size() > 1) write_years_csv(folder / "years.csv", maps.open, maps.periods);
+  if (!plan.rows.empty() && !maps.crops.empty()) write_rows_csv(folder / "rows.csv", plan, maps);
   LayerLight year = std::move(light.back());
 
   const MapContext context = context_of(plan, site, plots);

@@ -26,6 +26,8 @@ inline constexpr float kDepthUnits = 4096.0F;
 struct CropTaken {
   float right = 0.0F;
   float left = 0.0F;
+  // The part of the period that this caster stands for; 1 but where a crop is several casters.
+  float leafed = 1.0F;
 };
 
 // A caster's view of one tile.
@@ -42,9 +44,10 @@ class CasterTile {
   // caster lies along them counts. False: nothing was added.
   virtual bool add_depth(GridAzimuth azimuth, float tangent, std::span<Depth> depth) = 0;
 
-  // Only of crops: the cells of the tile that the crop stands on, and what it takes there at full leaf.
+  // Only of crops: the cells of the tile that the crop stands on, and what it takes there at a share of full
+  // leaf.
   virtual std::span<const std::uint32_t> crop_cells() const { return {}; }
-  virtual CropTaken taken(GridAzimuth, float) { return {}; }
+  virtual CropTaken taken(GridAzimuth, float /*tangent*/, double /*leafing*/) { return {}; }
 };
 
 class Caster {
@@ -56,6 +59,10 @@ class Caster {
 
   // Of a crop, whose part of the light is wanted for itself, its number among the plan's rows.
   virtual std::optional<int> crop() const { return std::nullopt; }
+
+  // Whether it stands for one state of leaf of a crop that is several casters: leafing() is then the part of
+  // a month in which it holds.
+  virtual bool one_state() const { return false; }
 
   // nullptr where no cell of the tile can be touched. May be called from several threads; what it
   // gives is used by one thread and must not outlive `tile`.

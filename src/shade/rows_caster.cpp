@@ -15,10 +15,11 @@ constexpr double kLowestTangent = 0.026;
 // So far below the plane of the rows' ground a receiver beside the plot is still shaded.
 constexpr double kMostDrop_m = 10.0;
 constexpr int kPhases = 16;
-constexpr int kReaches = 16;
+constexpr int kReaches = 8;
 // Places across a cell that its depth is the mean of.
-constexpr int kPlaces = 5;
+constexpr int kPlaces = 3;
 constexpr double kBlack = 16.0;
+constexpr double kSteepest = 1.0e9;
 
 CellWindow box_of(const std::vector<std::vector<MapPoint>>& rings, const GridFrame& frame) {
   double west = 1e300, east = -1e300, south = 1e300, north = -1e300;
@@ -94,6 +95,7 @@ class RowsTile : public CasterTile {
             (column - tile.receiver_window.column);
         cell.above_m =
             cell.inside ? 0.0 : double(tile.receivers[eye]) - caster.plane().at(cell.place) - height;
+        if (!cell.inside && !reaches(cell)) continue;
         cells_.push_back(cell);
       }
     }
@@ -102,15 +104,8 @@ class RowsTile : public CasterTile {
 
   float highest_tangent(GridAzimuth azimuth) override {
     face(azimuth);
-    if (!crop_cells_.empty()) return 1.0e9F;
-    // The steepest sight to the top of rows from beside them.
-    double steepest = 0.0;
-    for (const Seen& seen : seen_) {
-      const Cell& cell = cells_[seen.cell];
-      const double rise = rows_.height_m - caster_.inputs().receiver_height_m - cell.above_m;
-      steepest = std::max(steepest, rise / std::max(seen.from_m, 1e-6) + steepest_ground());
-    }
-    return static_cast<float>(std::min(steepest, 1.0e9));
+    if (!crop_cells_.empty()) return static_cast<float>(kSteepest);
+    return seen_.empty() ? 0.0F : seen_.front().steepest;
   }
 
   bool add_depth(GridAzimuth azimuth, float tangent, std::span<Depth> depth) override {
@@ -123,6 +118,7 @@ class RowsTile : public CasterTile {
     fill_table(ray, far);
     bool added = false;
     for (const Seen& seen : seen_) {
+      if (seen.steepest < tangent) break;
       const Cell& cell = cells_[seen.cell];
       // The same ray where it passes the height that the table is made for.
       const double back = cell.above_m / ray.rise;
@@ -142,12 +138,13 @@ class RowsTile : public CasterTile {
   std::span<const std::uint32_t> crop_cells() const override { return crop_cells_; }
 
   // Rows without end: what enters a plot from its sides is not counted to the cells there.
-  CropTaken taken(GridAzimuth azimuth, float tangent) override {
+  CropTaken taken(GridAzimuth azimuth, float tangent, double leafing) override {
     const GridAzimuth rows = caster_.plot().azimuth();
     const RowRay ray = row_ray(rows, azimuth, tangent, caster_.plane().rise);
     if (ray.meets_ground()) return {};
-    const double passes = cycle_passage(rows_, ray, caster_.leaves().depth(ray.sine), 0.0);
-    const double taken = (1.0 - passes) * (1.0 - caster_.leaves().reflected(ray.sine));
+    const RowLeaves& leaves = caster_.leaves();
+    const double passes = cycle_passage(rows_, ray, leafing * leaves.depth(ray.sine), 0.0);
+    const double taken = (1.0 - passes) * (1.0 - leaves.reflected(ray.sine));
     const double side = sin(azimuth.from_grid_north - rows.from_grid_north);
     // Straight ahead or behind is of neither side.
     if (std::abs(side) < 1e-9) return {static_cast<float>(0.5 * taken), static_cast<float>(0.5 * taken)};
@@ -166,10 +163,18 @@ class RowsTile : public CasterTile {
   struct Seen {
     std::size_t cell;
     double from_m, to_m;
+    float steepest;  // no ray of a tangent above it meets the rows here
   };
 
   double steepest_ground() const {
     return std::hypot(caster_.plane().rise.rise_east, caster_.plane().rise.rise_north);
+  }
+
+  // Whether rows can be seen from a cell beside the plot above the lowest elevation that counts.
+  bool reaches(const Cell& cell) const {
+    const double rise = rows_.height_m - caster_.inputs().receiver_height_m - cell.above_m;
+    const double away = caster_.away_m(cell.place);
+    return rise + steepest_ground() * away > kLowestTangent * away;
   }
 
   // Where the rays towards an azimuth run through the plot, the same for all elevations.
@@ -179,9 +184,17 @@ class RowsTile : public CasterTile {
     seen_.clear();
     const double most = (rows_.height_m + kMostDrop_m) / kLowestTangent;
     for (std::size_t i = 0; i < cells_.size(); ++i) {
-      caster_.plot().stretches(cells_[i].place, azimuth, most, stretches_);
-      for (const RowReach& reach : stretches_) seen_.push_back({i, reach.from_m, reach.to_m});
+      const Cell& cell = cells_[i];
+      caster_.plot().stretches(cell.place, azimuth, most, stretches_);
+      for (const RowReach& reach : stretches_) {
+        const double rise = rows_.height_m - caster_.inputs().receiver_height_m - cell.above_m;
+        const double steepest = reach.from_m > 0.0 ? rise / reach.from_m + steepest_ground() : kSteepest;
+        if (steepest > 0.0) seen_.push_back({i, reach.from_m, reach.to_m, static_cast<float>(steepest)});
+      }
     }
+    std::sort(seen_.begin(), seen_.end(), [](const Seen& a, const Seen& b) {
+      return a.steepest != b.steepest ? a.steepest > b.steepest : a.cell < b.cell;
+    });
   }
 
   // Optical depth of the mean of what passes, by place across the rows and part of the way to the farthest
@@ -190,7 +203,7 @@ class RowsTile : public CasterTile {
     const double per_m = caster_.leaves().depth(ray.sine);
     const double height = caster_.inputs().receiver_height_m;
     const double cell = caster_.cell_m();
-    const bool whole_cycle = cell > rows_.spacing_m / 3.0;
+    const bool whole_cycle = RowsCaster::whole_cycle(cell, rows_);
     phases_ = whole_cycle ? 1 : kPhases;
     for (int reach = 0; reach <= kReaches; ++reach) {
       const RowReach of_ray{0.0, far * reach / kReaches};
@@ -243,6 +256,14 @@ RowsCaster::RowsCaster(const RowsInputs& inputs, const Terrain& terrain)
       leaves_(inputs.rows, inputs.leafing),
       box_(box_of(inputs.rings, terrain.frame())) {
   plane_ = plane_of(plot_, box_, terrain_);
+}
+
+double RowsCaster::away_m(MapPoint place) const {
+  const GridFrame& frame = terrain_.frame();
+  const double west = frame.west + box_.column * frame.cell_m, east = west + box_.columns * frame.cell_m;
+  const double north = frame.north - box_.row * frame.cell_m, south = north - box_.rows * frame.cell_m;
+  return std::hypot(std::max({0.0, west - place.east, place.east - east}),
+                    std::max({0.0, south - place.north, place.north - north}));
 }
 
 std::unique_ptr<CasterTile> RowsCaster::tile(const TerrainTile& tile) const {

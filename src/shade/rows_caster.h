@@ -24,6 +24,7 @@ struct RowsInputs {
   double leafing = 1.0;                // share of full leaf
   std::array<double, 12> months = {};  // 1 where that share holds, 0 where it does not
   double receiver_height_m = 0.5;
+  bool one_state = false;  // `leafing` is the state, `months` where it holds
 };
 
 class RowsCaster : public Caster {
@@ -33,6 +34,7 @@ class RowsCaster : public Caster {
 
   const std::array<double, 12>& leafing() const override { return inputs_.months; }
   std::optional<int> crop() const override { return inputs_.number; }
+  bool one_state() const override { return inputs_.one_state; }
   std::unique_ptr<CasterTile> tile(const TerrainTile& tile) const override;
 
   struct Plane {
@@ -48,6 +50,10 @@ class RowsCaster : public Caster {
   const RowsInputs& inputs() const { return inputs_; }
   const RowLeaves& leaves() const { return leaves_; }
   const Plane& plane() const { return plane_; }
+  // To the box of the plot.
+  double away_m(MapPoint place) const;
+  // Whether cells are too wide to have a place across the rows.
+  static bool whole_cycle(double cell_m, const CropRows& rows) { return cell_m > rows.spacing_m / 3.0; }
   double cell_m() const { return terrain_.frame().cell_m; }
 
  private:

@@ -48,6 +48,7 @@ class Terrain {
 
   const GridFrame& frame() const { return frame_; }
   double valid_fraction() const { return valid_fraction_; }
+  double receiver_height_m() const { return inputs_.receiver_height_m; }
   float lowest_m() const { return lowest_m_; }
   float highest_m() const { return highest_m_; }
   // Level of the coarsest grid, and the box of all data in map cells (may reach outside the map).

@@ -73,13 +73,6 @@ TEST(BadPlan, WattsForMegajoules) {
       {"farm.toml:5 light.monthly_global", "March", "(found: 93)", "mean W m-2 times 0.0864"});
 }
 
-// Until maps have casters; see src/app/leaves_not_mapped.h.
-TEST(BadPlan, LeavesCannotBeMappedYet) {
-  const SmallFarm farm;
-  farm.write_plan("", "[[canopy]]\ntop = 3\nleaf_density = 1\n");
-  expect_all_refuse(farm, 2, {"farm.toml:6 canopy: leaves are read, but", "later version"});
-}
-
 TEST(BadPlan, UnknownTimeZone) {
   const SmallFarm farm;
   write_text(farm / "farm.toml",
