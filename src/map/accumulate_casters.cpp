@@ -127,6 +127,17 @@ inline float band_light(const CasterTables& tables, const LossTable& level, std:
          static_cast<float>(level.units()[static_cast<std::size_t>(column)]);
 }
 
+// Whether no caster but crops stands before the cell.
+bool stands_alone(const CasterLook& look, std::size_t cell, const CasterTables& tables) {
+  unsigned any = 0;
+  for (const DepthPlanes& planes : look.bands) {
+    for (std::size_t g = 0; g < planes.groups.size(); ++g) {
+      if (!tables.of_crops(static_cast<int>(g))) any |= planes.groups[g][cell];
+    }
+  }
+  return any == 0;
+}
+
 // What a crop takes from one look above each horizon step that is met, where nothing else stands before it.
 class TakenAbove {
  public:
@@ -180,7 +191,7 @@ void accumulate_crops(const CasterBatch& batch, const CasterTables& tables, cons
             look.steps[batch.by_columns ? column * static_cast<std::size_t>(batch.rows) + row : cell];
         float* const taken = crops.taken.data() + crop.slots[k] * 2 * columns;
         float* const came = crops.came.data() + crop.slots[k] * columns;
-        if (!others) {
+        if (!others || stands_alone(look, cell, tables)) {
           const std::vector<float>& above = alone.row(step);
           for (std::size_t c = 0; c < 2 * columns; ++c) taken[c] += above[c];
           for (std::size_t c = 0; c < columns; ++c) came[c] += above[2 * columns + c];
