@@ -39,8 +39,12 @@ TEST(Leaves, MapTellsWhatRowsTake) {
     std::string name, period, area, came, taken;
     std::getline(fields, name, ','), std::getline(fields, period, ','), std::getline(fields, area, ',');
     std::getline(fields, came, ','), std::getline(fields, taken, ',');
-    if (period == "01") EXPECT_EQ(std::stod(taken), 0.0) << line;
-    if (period == "06") EXPECT_GT(std::stod(taken), 5.0) << line;
+    if (period == "01") {
+      EXPECT_EQ(std::stod(taken), 0.0) << line;
+    }
+    if (period == "06") {
+      EXPECT_GT(std::stod(taken), 5.0) << line;
+    }
     EXPECT_LE(std::stod(taken), std::stod(came)) << line;
     ++lines;
   }
