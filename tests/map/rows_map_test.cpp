@@ -74,6 +74,15 @@ std::vector<double> months_of(const TileShares& shares, const DomeLight& light, 
   return out;
 }
 
+RowProfile profile_along(const DomeLight& light, double azimuth_deg) {
+  RowProfileRequest request;
+  request.rows = orchard();
+  request.azimuth = {Angle::degrees(azimuth_deg)};
+  request.positions = 96;
+  request.height_m = kReceiver_m;
+  return profile_of_rows(light, request);
+}
+
 constexpr double kMostOff = 0.01;  // of the open light, one cell: bands, looks, sixteen places across a cycle
 constexpr double kMeanOff = 0.005;  // over a cycle
 
@@ -85,12 +94,7 @@ TEST(RowsInTheMap, FineCellsFollowTheProfile) {
     const Casters casters = rows_in(scene, orchard(), azimuth, 75.0);
     const TileSolver solver(scene.terrain(), light, ReceiverPlane::level, casters);
     const TileShares shares = solver.solve(scene.terrain().tile({130, 130, 40, 40}), Angle());
-    RowProfileRequest request;
-    request.rows = orchard();
-    request.azimuth = {Angle::degrees(azimuth)};
-    request.positions = 96;
-    request.height_m = kReceiver_m;
-    const RowProfile profile = profile_of_rows(light, request);
+    const RowProfile profile = profile_along(light, azimuth);
     const auto& caster = static_cast<const RowsCaster&>(*casters.front());
     for (const std::size_t month : {std::size_t{0}, std::size_t{5}, std::size_t{11}}) {
       double mean = 0.0, expected = 0.0;
@@ -132,12 +136,7 @@ TEST(RowsInTheMap, WideCellsHaveTheMeanOfTheCycle) {
     const Casters casters = rows_in(scene, orchard(), azimuth, 500.0);
     const TileSolver solver(scene.terrain(), light, ReceiverPlane::level, casters);
     const TileShares shares = solver.solve(scene.terrain().tile({145, 145, 10, 10}), Angle());
-    RowProfileRequest request;
-    request.rows = orchard();
-    request.azimuth = {Angle::degrees(azimuth)};
-    request.positions = 96;
-    request.height_m = kReceiver_m;
-    const RowProfile profile = profile_of_rows(light, request);
+    const RowProfile profile = profile_along(light, azimuth);
     const std::vector<double> ours = months_of(shares, light, 55);
     for (std::size_t month = 0; month < 12; ++month) {
       double mean = 0.0;
@@ -147,8 +146,8 @@ TEST(RowsInTheMap, WideCellsHaveTheMeanOfTheCycle) {
   }
 }
 
-// Black leaves: what comes to the tops of the rows is taken or reaches the ground. Receivers on the ground, cells
-// with the mean of the cycle, a hill in the south; and what is taken agrees with the study.
+// Black leaves: what comes to the tops of the rows is taken or reaches the ground. Receivers on the ground,
+// cells with the mean of the cycle, a hill in the south; and what is taken agrees with the study.
 TEST(RowsInTheMap, TakenAndPassedAreWhatCame) {
   SceneOptions options = square(4.0);
   options.receiver_height_m = 0.0;
