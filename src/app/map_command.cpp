@@ -70,7 +70,7 @@ void run_map(const MapCommand& command) {
       command.folder.empty() ? std::filesystem::path("outputs") / plan.file.stem() : command.folder;
   require_apart_from_inputs(plan, out);
   const std::optional<FinishedRun> finished = finished_run_of(command, plan, out);
-  const Site site = site_of(plan);
+  Site site = site_of(plan);
   const std::vector<Plot> plots = plots_of(plan, site.frame);
   TerminalProgress progress(command.common.quiet);
   RunFolder folder(out);
@@ -83,10 +83,16 @@ void run_map(const MapCommand& command) {
     workers.emplace(tbb::global_control::max_allowed_parallelism, static_cast<std::size_t>(options.jobs));
   }
   const auto provenance = provenance_of(plan, site);
-  const MapResult maps =
-      finished ? make_maps_on(*finished, plan, open_field(open_years(site.series, plan.periods)), provenance,
-                              folder.staging(), options, progress)
-               : make_maps(plan, dome_light_of(plan, site), provenance, folder.staging(), options, progress);
+  MapResult maps;
+  if (finished) {
+    const OpenField open = open_field(open_years(site.series, plan.periods));
+    forget_steps(site);
+    maps = make_maps_on(*finished, plan, open, provenance, folder.staging(), options, progress);
+  } else {
+    const DomeLight light = dome_light_of(plan, site);
+    forget_steps(site);
+    maps = make_maps(plan, light, provenance, folder.staging(), options, progress);
+  }
   write_run(plan, site, maps, plots, folder.staging(), options, progress);
   folder.publish("summary.json", files_of_former_run(out));
   if (command.common.json) {

@@ -111,6 +111,7 @@ Site open_site(const Plan& plan) {
   LightOptions options = plan.light_options;
   options.read_point = read_point;
   site.series = make_light(plan.light, site.middle.place, plan.site.clock, options, plan.light_where);
+  site.umol_per_joule = umol_per_joule(site.series);
   for (const std::string& note : site.series.notes) site.notes.push_back(sentence(note));
   note_clock(site.series, site.notes);
   check_years(plan, site);
@@ -153,6 +154,11 @@ double umol_per_joule(const LightSeries& series) {
   return energy > 0.0 ? photons / energy : 0.0;
 }
 
+void forget_steps(Site& site) {
+  site.series.steps = {};
+  site.series.sun = {};
+}
+
 std::map<std::string, std::string> provenance_of(const Plan& plan, const Site& site) {
   const Dome dome = Dome::of(plan.dome.quality);
   std::map<std::string, std::string> out;
@@ -161,7 +167,7 @@ std::map<std::string, std::string> provenance_of(const Plan& plan, const Site& s
   out["SUNFALL_LIGHT"] =
       site.series.description + (site.series.is_ceiling ? " (a cloudless ceiling, not a forecast)" : "");
   out["SUNFALL_PHOTONS"] =
-      fmt::format("{:.3f} umol per J of global radiation over the year", umol_per_joule(site.series));
+      fmt::format("{:.3f} umol per J of global radiation over the year", site.umol_per_joule);
   out["SUNFALL_SKY"] = sky_name(plan.dome.sky);
   out["SUNFALL_DOME"] =
       fmt::format("{} sectors, {} bands, {} lines a sector", dome.sectors, dome.bands, dome.lines_per_sector);

@@ -170,7 +170,7 @@ Summary summary_of(const Plan& plan, const Site& site, const MapResult& maps,
   summary.place.convergence_deg = site.middle.convergence.degrees();
   summary.light.description = site.series.description;
   summary.light.is_ceiling = site.series.is_ceiling;
-  summary.light.umol_per_joule = umol_per_joule(site.series);
+  summary.light.umol_per_joule = site.umol_per_joule;
   const Dome dome = Dome::of(plan.dome.quality);
   summary.dome.sectors = dome.sectors;
   summary.dome.bands = dome.bands;
