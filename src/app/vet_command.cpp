@@ -49,11 +49,10 @@ Estimate estimate(const Plan& plan, const Terrain& terrain, const Casters& caste
   const double percentiles = plan.output.percentiles ? 12.0 * double(light.periods.size() + 1) : 0.0;
   const double solving =
       jobs * working * (400.0 + 8.0 * double(solver.columns()) + percentiles) + 1.4 * double(frame.size());
+  const int groups = CasterTables::groups_of(casters);
+  const double leaves =
+      2.0 * jobs * working * groups * double(caster_looks(groups)) * double(caster_bands(light.dome).size());
   // What a layer holds while it is finished, per cell: found by measuring, a little up.
-  const double leaves = casters.empty()
-                            ? 0.0
-                            : jobs * working * 2.0 * kCasterLooks * double(caster_bands(light.dome).size()) *
-                                  CasterTables::groups_of(casters);
   const double finishing = std::min<double>(jobs, double(layers)) * 6.0 * double(frame.size());
   out.memory_mib = std::max(solving + leaves, finishing) / 1048576.0 + 320.0;
   return out;

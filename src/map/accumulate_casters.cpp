@@ -52,9 +52,6 @@ inline __attribute__((always_inline)) bool taken_by_state(const DepthPlanes& pla
   return true;
 }
 
-// A state for every column of 12 months and four seasons, beam and sky.
-constexpr int kMostStates = 64;
-
 inline __attribute__((always_inline)) void add_band(const std::uint16_t* below, const std::uint16_t* low,
                                                     const std::uint16_t* high, const std::uint16_t* taken,
                                                     std::uint32_t* sums) {
@@ -71,7 +68,7 @@ SUNFALL_CLONES void accumulate_casters(const CasterBatch& batch, const CasterTab
                                        const LossTable& level, int block, std::uint32_t* sums) {
   const std::uint16_t* const table = taken_table().data();
   const std::uint16_t* const state_of = tables.state_of_column().data() + block * kColumnBlock;
-  std::uint16_t by_state[kMostStates];
+  std::vector<std::uint16_t> by_state(static_cast<std::size_t>(tables.states()));
   std::uint16_t taken[kColumnBlock];
   const std::size_t right = batch.by_columns ? static_cast<std::size_t>(batch.rows) : 1;
   const std::size_t down = batch.by_columns ? 1 : static_cast<std::size_t>(batch.columns);
@@ -89,7 +86,7 @@ SUNFALL_CLONES void accumulate_casters(const CasterBatch& batch, const CasterTab
           const std::uint16_t* const low = edges + static_cast<std::size_t>(planes.band) * kColumnBlock;
           for (int i = 0; i < count; ++i) {
             const std::size_t cell = first + static_cast<std::size_t>(i);
-            if (!taken_by_state(planes, cell, tables, table, by_state)) continue;
+            if (!taken_by_state(planes, cell, tables, table, by_state.data())) continue;
             for (int c = 0; c < kColumnBlock; ++c) taken[c] = by_state[state_of[c]];
             add_band(
                 below + static_cast<std::size_t>(steps[static_cast<std::size_t>(i) * right]) * kColumnBlock,
@@ -176,7 +173,7 @@ void accumulate_crops(const CasterBatch& batch, const CasterTables& tables, cons
                       TileCrops& crops) {
   const std::uint16_t* const table = taken_table().data();
   const std::size_t columns = static_cast<std::size_t>(crops.columns);
-  float passed[kMostStates];
+  std::vector<float> passed(static_cast<std::size_t>(tables.states()));
   for (std::size_t i = 0; i < crops.crops.size(); ++i) {
     const TileCrops::Crop& crop = crops.crops[i];
     for (const CasterLook& look : batch.looks) {
@@ -198,7 +195,7 @@ void accumulate_crops(const CasterBatch& batch, const CasterTables& tables, cons
           continue;
         }
         for (const DepthPlanes& planes : look.bands) {
-          passed_by_state(planes, cell, tables, table, passed);
+          passed_by_state(planes, cell, tables, table, passed.data());
           const CropTaken* by_state = planes.crops.data() + i * static_cast<std::size_t>(tables.states());
           for (std::size_t c = 0; c < columns; ++c) {
             const std::size_t state = tables.state_of_column()[c];
@@ -218,7 +215,7 @@ SUNFALL_CLONES void accumulate_casters_on_slope(const CasterBatch& batch, const 
                                                 const SlopeTables& slope, std::size_t first_look,
                                                 float* sums) {
   const std::uint16_t* const table = taken_table().data();
-  std::uint16_t by_state[kMostStates];
+  std::vector<std::uint16_t> by_state(static_cast<std::size_t>(tables.states()));
   const int width = slope.width;
   for (int row = 0; row < batch.rows; ++row) {
     for (int column = 0; column < batch.columns; ++column) {
@@ -231,7 +228,7 @@ SUNFALL_CLONES void accumulate_casters_on_slope(const CasterBatch& batch, const 
         const int step = std::max<int>(look.steps[place], horizon_step(rise));
         const float* below = slope.tables[line] + static_cast<std::size_t>(step) * 2 * width;
         for (const DepthPlanes& planes : look.bands) {
-          if (!taken_by_state(planes, cell, tables, table, by_state)) continue;
+          if (!taken_by_state(planes, cell, tables, table, by_state.data())) continue;
           const float* low =
               tables.slope_edges(look.look) + static_cast<std::size_t>(planes.band) * 2 * width;
           const float* high = low + 2 * width;

@@ -24,8 +24,10 @@ struct CasterBand {
 };
 std::vector<CasterBand> caster_bands(const Dome& dome);
 
-// Looks whose depths are kept at a time.
-inline constexpr std::size_t kCasterLooks = 4;
+// Looks whose depths are kept at a time: fewer where there are many groups, so that these do not fill memory.
+constexpr std::size_t caster_looks(int groups) {
+  return groups < 4 ? 4 / static_cast<std::size_t>(groups < 1 ? 1 : groups) : 1;
+}
 
 class CasterTables {
  public:

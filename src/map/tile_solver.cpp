@@ -142,7 +142,7 @@ void TileSolver::caster_batches(const HorizonBatch& horizons, std::span<const Ca
   const std::size_t cells = static_cast<std::size_t>(horizons.rows) * horizons.columns;
   const std::vector<CasterBand>& bands = caster_tables_->bands();
   const int groups = caster_tables_->groups();
-  room.depths.resize(cells * bands.size() * groups * kCasterLooks);
+  room.depths.resize(cells * bands.size() * groups * caster_looks(groups));
   CasterBatch batch{{}, horizons.rows, horizons.columns, horizons.by_columns};
   std::size_t planes_used = 0;
   const auto flush = [&] {
@@ -176,7 +176,7 @@ void TileSolver::caster_batches(const HorizonBatch& horizons, std::span<const Ca
       planes_used += static_cast<std::size_t>(groups);
     }
     if (!of_look.bands.empty()) batch.looks.push_back(std::move(of_look));
-    if (batch.looks.size() == kCasterLooks) flush();
+    if (batch.looks.size() == caster_looks(groups)) flush();
   }
   flush();
 }

@@ -7,6 +7,7 @@
 #include "map/scene.h"
 #include "map/tile_solver.h"
 #include "shade/caster.h"
+#include "sunfall/rows.h"
 
 namespace sunfall::testing {
 namespace {
@@ -129,6 +130,30 @@ TEST_P(Planes, LeavesFollowTheirMonths) {
   for (int m = 0; m < 12; ++m) {
     EXPECT_NEAR(shares.of(kMiddle)[m], std::exp(-0.3 - summer[m]), kCut) << "beam of month " << m + 1;
     EXPECT_NEAR(shares.of(kMiddle)[12 + m], std::exp(-0.3 - summer[m]), kCut) << "sky of month " << m + 1;
+  }
+}
+
+// As many states of leaf as a plan has ranges of days: no number of them is too many.
+TEST_P(Planes, EveryRangeHasItsOwnLeaves) {
+  std::array<double, 12> growing{};
+  for (std::size_t m = 0; m < 12; ++m) growing[m] = double(m) / 11.0;
+  std::vector<Period> periods = month_periods();
+  for (unsigned i = 0; i < 80; ++i) {
+    const std::chrono::sys_days from{std::chrono::year{2025} / 1 / 1};
+    const std::chrono::year_month_day first{from + std::chrono::days{i}},
+        last{from + std::chrono::days{160 + 2 * i}};
+    periods.push_back({"r" + std::to_string(i), first.month() / first.day(), last.month() / last.day()});
+  }
+  const Place place{Angle::degrees(52.0), Angle::degrees(5.0)};
+  const LightSeries series = make_light(ClearSource{}, place, Clock::parse("+01:00", "test"), {}, "test");
+  const DomeLight light = make_dome_light(series, Dome::of(DomeQuality::draft), SkyModel::isotropic, periods);
+  const Scene scene(flat, {}, square());
+  const TileShares shares = solve(scene, light, GetParam(), casters_of({{Roof::Kind::cloth, 0.8, growing}}));
+  for (std::size_t p = 0; p < periods.size(); ++p) {
+    // Leafing is kept in 1/256.
+    EXPECT_NEAR(shares.of(kMiddle)[p], std::exp(-0.8 * leafing_of(periods[p], growing)),
+                kCut + 0.8 * 0.5 / 256)
+        << periods[p].name;
   }
 }
 
