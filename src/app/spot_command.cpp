@@ -112,6 +112,8 @@ void print_spot(const Plan& plan, const Spot& spot, const std::filesystem::path&
   if (plan.site.receiver_plane == ReceiverPlane::ground) {
     fmt::print("\nThe months are in the plane of the ground; the day's curve is for a level receiver.\n");
   }
+  for (const std::string& note : spot.notes)
+    fmt::print("{}{}\n", &note == &spot.notes.front() ? "\n" : "", note);
   fmt::print("\nSun path, months and the day's curve are in {}\n", out.string());
 }
 
